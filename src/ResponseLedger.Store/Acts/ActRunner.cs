@@ -1,0 +1,52 @@
+using Microsoft.EntityFrameworkCore;
+using Microsoft.EntityFrameworkCore.Storage;
+using ResponseLedger.Ledger;
+using ResponseLedger.Store.Model;
+
+namespace ResponseLedger.Store.Acts;
+
+/// <summary>
+/// The one place where anything is saved: execution strategy, transaction, the act, its ledger entries, commit, and the
+/// question after a broken commit whether it went through. Nothing saves outside it.
+/// </summary>
+public sealed class ActRunner(IDbContextFactory<ResponseLedgerContext> contexts, TimeProvider time, LedgerSequencer sequencer)
+{
+    /// <summary>Runs an act. It may be run again after a transient failure, each time on a fresh context, so it must not keep state outside itself.</summary>
+    /// <exception cref="InvalidOperationException">The act recorded no ledger entry.</exception>
+    public async Task<T> RunAsync<T>(Actor actor, Func<Act, CancellationToken, Task<T>> act, CancellationToken cancellationToken)
+    {
+        await using var outer = await contexts.CreateDbContextAsync(cancellationToken);
+        var committing = Guid.Empty;
+        T outcome = default!;
+        var result = await outer.Database.CreateExecutionStrategy().ExecuteAsync(
+            act,
+            async (_, body, token) =>
+            {
+                await using var db = await contexts.CreateDbContextAsync(token);
+                await using var transaction = await db.Database.BeginTransactionAsync(token);
+                var attempt = new Act(db, actor, Microseconds.Cut(time.GetUtcNow()), time);
+                var value = await body(attempt, token);
+                if (attempt.Entries.Count == 0)
+                    throw new InvalidOperationException("An act records at least one ledger entry.");
+
+                db.LedgerEntries.AddRange(attempt.Entries);
+                db.LedgerQueue.AddRange(attempt.Entries.Select(e => new LedgerQueueRow { EntryId = e.Id }));
+                await db.SaveChangesAsync(token);
+                committing = attempt.Entries[0].Id;
+                outcome = value;
+
+                // From here the outcome may be unknown to us: the caller's cancellation must not blur it further.
+                await transaction.CommitAsync(CancellationToken.None);
+                return value;
+            },
+            async (_, body, token) =>
+            {
+                await using var db = await contexts.CreateDbContextAsync(token);
+                var committed = committing != Guid.Empty && await db.LedgerEntries.AnyAsync(e => e.Id == committing, token);
+                return new ExecutionResult<T>(committed, outcome);
+            },
+            cancellationToken);
+        sequencer.Wake();
+        return result;
+    }
+}

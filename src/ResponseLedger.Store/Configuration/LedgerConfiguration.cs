@@ -1,0 +1,29 @@
+using Microsoft.EntityFrameworkCore;
+using Microsoft.EntityFrameworkCore.Metadata.Builders;
+using ResponseLedger.Store.Model;
+
+namespace ResponseLedger.Store.Configuration;
+
+internal sealed class LedgerConfiguration :
+    IEntityTypeConfiguration<LedgerEntryRow>,
+    IEntityTypeConfiguration<LedgerPosition>,
+    IEntityTypeConfiguration<LedgerQueueRow>
+{
+    public void Configure(EntityTypeBuilder<LedgerEntryRow> builder) => builder.ToTable("ledger_entry");
+
+    public void Configure(EntityTypeBuilder<LedgerPosition> builder)
+    {
+        builder.ToTable("ledger_position");
+        builder.HasKey(p => p.Position);
+        builder.Property(p => p.Position).ValueGeneratedNever();
+        builder.HasIndex(p => p.EntryId).IsUnique();
+        builder.HasOne<LedgerEntryRow>().WithMany().HasForeignKey(p => p.EntryId).OnDelete(DeleteBehavior.Restrict);
+    }
+
+    public void Configure(EntityTypeBuilder<LedgerQueueRow> builder)
+    {
+        builder.ToTable("ledger_queue");
+        builder.HasKey(q => q.No);
+        builder.Property(q => q.No).UseIdentityAlwaysColumn();
+    }
+}

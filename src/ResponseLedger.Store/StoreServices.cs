@@ -1,0 +1,44 @@
+using Microsoft.EntityFrameworkCore;
+using Microsoft.Extensions.DependencyInjection;
+using Npgsql;
+using ResponseLedger.Store.Acts;
+
+namespace ResponseLedger.Store;
+
+/// <summary>Registers the store.</summary>
+public static class StoreServices
+{
+    /// <summary>Connections the server may hold at once, well under PostgreSQL's default limit of 100.</summary>
+    public const int MaxPoolSize = 40;
+
+    private const string MigrationsAssembly = "ResponseLedger.Migrations";
+
+    /// <summary>Registers data source, contexts, the act runner and the ledger's sequencer. A TimeProvider must be registered beside it.</summary>
+    /// <param name="services">The services to add to.</param>
+    /// <param name="connectionString">An Npgsql connection string; a pool size it does not name is capped at <see cref="MaxPoolSize"/>.</param>
+    public static IServiceCollection AddLedgerStore(this IServiceCollection services, string connectionString)
+    {
+        services.AddSingleton(_ => NpgsqlDataSource.Create(Capped(connectionString)));
+        services.AddPooledDbContextFactory<ResponseLedgerContext>((provider, options) => Configure(options, provider.GetRequiredService<NpgsqlDataSource>()));
+        services.AddScoped(provider => provider.GetRequiredService<IDbContextFactory<ResponseLedgerContext>>().CreateDbContext());
+        services.AddSingleton<ActRunner>();
+        services.AddSingleton<LedgerSequencer>();
+        return services;
+    }
+
+    /// <summary>Sets a context up for a data source: provider, naming, migrations, retries.</summary>
+    public static DbContextOptionsBuilder Configure(DbContextOptionsBuilder options, NpgsqlDataSource dataSource)
+        => options
+            .UseNpgsql(dataSource, npgsql => npgsql.MigrationsAssembly(MigrationsAssembly).EnableRetryOnFailure().SetPostgresVersion(15, 0))
+            .UseSnakeCaseNamingConvention();
+
+    private static string Capped(string connectionString)
+    {
+        var builder = new NpgsqlConnectionStringBuilder(connectionString);
+        if (!builder.ContainsKey("Maximum Pool Size"))
+            builder.MaxPoolSize = MaxPoolSize;
+        if (!builder.ContainsKey("Application Name"))
+            builder.ApplicationName = "ResponseLedger";
+        return builder.ConnectionString;
+    }
+}
