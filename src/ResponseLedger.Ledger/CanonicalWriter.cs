@@ -25,7 +25,7 @@ internal readonly struct CanonicalWriter(ArrayBufferWriter<byte> buffer)
                 WriteArray(items, depth, static (writer, value, at) => writer.Write(value, at));
                 break;
             case JsonValue value:
-                WriteValue(value);
+                WriteValue(value, depth);
                 break;
         }
     }
@@ -100,11 +100,11 @@ internal readonly struct CanonicalWriter(ArrayBufferWriter<byte> buffer)
         Raw("]");
     }
 
-    private void WriteValue(JsonValue value)
+    private void WriteValue(JsonValue value, int depth)
     {
         if (value.TryGetValue(out JsonElement element))
         {
-            Write(element, 0);
+            Write(element, depth);
             return;
         }
 

@@ -1,0 +1,28 @@
+using ResponseLedger.Engine.Masks;
+using ResponseLedger.Records.Masks;
+
+namespace ResponseLedger.Records.Verdicts;
+
+/// <summary>A verdict as one database row keeps it: numbers in the mask's order, without prose.</summary>
+/// <param name="Outcome">The run's outcome.</param>
+/// <param name="WorstIndex">The worst criterion; null for a mask without criteria.</param>
+/// <param name="Margins">Margin of each criterion in its unit; null where there is none.</param>
+/// <param name="Outcomes">Outcome of each criterion, as the number of <see cref="Engine.Masks.Outcome"/>.</param>
+/// <param name="FrequenciesHz">Where the least margin lies; null where there is none.</param>
+public sealed record StoredVerdict(Outcome Outcome, int? WorstIndex, double?[] Margins, short[] Outcomes, double?[] FrequenciesHz)
+{
+    /// <summary>The compact form of an evaluation.</summary>
+    public static StoredVerdict From(Evaluation evaluation) => throw new NotImplementedException();
+
+    /// <summary>The worst criterion with its name and unit, without judging again; null for a mask without criteria.</summary>
+    /// <exception cref="ArgumentException">The verdict is not of this mask.</exception>
+    public static WorstCriterion? WorstOf(MaskDocument mask, StoredVerdict verdict) => throw new NotImplementedException();
+}
+
+/// <summary>The criterion that decided a verdict.</summary>
+/// <param name="Criterion">Name of the limit or requirement.</param>
+/// <param name="Outcome">Its outcome.</param>
+/// <param name="FrequencyHz">Where its least margin lies, or null.</param>
+/// <param name="Margin">Its margin in <paramref name="Unit"/>, or null.</param>
+/// <param name="Unit">dB, deg, s, Hz, dB/decade or 1.</param>
+public sealed record WorstCriterion(string Criterion, Outcome Outcome, double? FrequencyHz, double? Margin, string Unit);
