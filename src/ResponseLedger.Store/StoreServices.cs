@@ -2,6 +2,7 @@ using Microsoft.EntityFrameworkCore;
 using Microsoft.Extensions.DependencyInjection;
 using Npgsql;
 using ResponseLedger.Store.Acts;
+using ResponseLedger.Store.Judging;
 
 namespace ResponseLedger.Store;
 
@@ -23,6 +24,7 @@ public static class StoreServices
         services.AddScoped(provider => provider.GetRequiredService<IDbContextFactory<ResponseLedgerContext>>().CreateDbContext());
         services.AddSingleton<ActRunner>();
         services.AddSingleton<LedgerSequencer>();
+        services.AddSingleton<JudgingMaterial>();
         return services;
     }
 

@@ -1,0 +1,52 @@
+using System.Text.Json;
+using Microsoft.AspNetCore.Diagnostics;
+using Microsoft.AspNetCore.Mvc;
+
+namespace ResponseLedger.Server.Http;
+
+/// <summary>The one place where refusals and broken requests become problem details (RFC 9457).</summary>
+internal sealed class RefusalMapping(IProblemDetailsService problems) : IExceptionHandler
+{
+    /// <summary>The problem document of a refusal.</summary>
+    public static ProblemDetails Describe(Refusal refusal)
+    {
+        var problem = Problem(refusal.Status, refusal.Code, refusal.Sentence);
+        if (refusal.Errors.Count > 0)
+            problem.Extensions["errors"] = refusal.Errors;
+        return problem;
+    }
+
+    public async ValueTask<bool> TryHandleAsync(HttpContext httpContext, Exception exception, CancellationToken cancellationToken)
+    {
+        var problem = exception switch
+        {
+            RefusedException refused => Describe(refused.Refusal),
+            BadHttpRequestException { InnerException: JsonException json } when json.Path is { Length: > 1 } path =>
+                Describe(new FieldRefused(path.TrimStart('$', '.'), "This member has another type or form than the one expected here.")),
+            BadHttpRequestException bad => Problem(bad.StatusCode, BadRequestCode(bad.StatusCode), BadRequestSentence(bad)),
+            _ => null,
+        };
+        if (problem is null)
+            return false;
+
+        httpContext.Response.StatusCode = problem.Status ?? StatusCodes.Status500InternalServerError;
+        return await problems.TryWriteAsync(new ProblemDetailsContext { HttpContext = httpContext, ProblemDetails = problem });
+    }
+
+    private static ProblemDetails Problem(int status, string code, string sentence) => new()
+    {
+        Status = status,
+        Detail = sentence,
+        Extensions = { ["code"] = code },
+    };
+
+    private static string BadRequestCode(int status) => status == StatusCodes.Status413PayloadTooLarge ? "tooLarge" : "badRequest";
+
+    private static string BadRequestSentence(BadHttpRequestException bad) => bad switch
+    {
+        { StatusCode: StatusCodes.Status413PayloadTooLarge } => "The request is larger than this server takes. Send fewer files at once.",
+        { StatusCode: StatusCodes.Status415UnsupportedMediaType } => "The body must be JSON, sent as application/json.",
+        { InnerException: JsonException } => "The body is not well-formed JSON, or is no object.",
+        _ => "The request could not be read: a parameter or the body is missing or malformed.",
+    };
+}

@@ -1,0 +1,13 @@
+namespace ResponseLedger.Server.Runs;
+
+/// <summary>The routes of this feature and the services that they need.</summary>
+internal static class RunsRoutes
+{
+    public static void AddServices(IServiceCollection services)
+    {
+    }
+
+    public static void Map(IEndpointRouteBuilder api)
+    {
+    }
+}

@@ -1,0 +1,13 @@
+namespace ResponseLedger.Server.Trail;
+
+/// <summary>The routes of this feature and the services that they need.</summary>
+internal static class TrailRoutes
+{
+    public static void AddServices(IServiceCollection services)
+    {
+    }
+
+    public static void Map(IEndpointRouteBuilder api)
+    {
+    }
+}
