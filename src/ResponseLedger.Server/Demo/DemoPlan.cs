@@ -48,8 +48,7 @@ internal static class DemoPlan
     ];
 }
 
-/// <summary>A device of the demo lab.</summary>
-/// <param name="Build">Draws a unit and gives its circuit in each condition.</param>
+/// <summary>A device of the demo lab; <c>Build</c> draws a unit and gives its circuit in each condition.</summary>
 internal sealed record DemoDevice(
     string PartNumber,
     string Revision,
