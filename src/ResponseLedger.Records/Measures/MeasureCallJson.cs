@@ -101,7 +101,7 @@ public static class MeasureCallJson
         return call;
     }
 
-    private static JsonObject WriteNote(Absence note) => new() { ["code"] = note.Code, ["explanation"] = note.Sentence };
+    private static JsonObject WriteNote(Absence note) => new() { ["code"] = note.Code, ["message"] = note.Sentence };
 
     private static JsonObject WriteCrossover(GainCrossover crossover) => new()
     {
