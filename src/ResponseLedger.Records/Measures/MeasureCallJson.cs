@@ -58,7 +58,7 @@ public static class MeasureCallJson
     }
 
     /// <summary>One text for equal calls, whatever the order of their parameters.</summary>
-    internal static string KeyOf(MeasureCall call) => Convert.ToBase64String(CanonicalJson.Serialize(Write(call)));
+    public static string KeyOf(MeasureCall call) => Convert.ToBase64String(CanonicalJson.Serialize(Write(call)));
 
     /// <summary>Reads the members <c>measure</c> and <c>parameters</c> of an object that may have others.</summary>
     internal static MeasureCall? Read(ObjectReader reader)
