@@ -47,7 +47,7 @@ public static class MeasureCallJson
         }
 
         if (result.Notes.Count > 0)
-            json["notes"] = new JsonArray([.. result.Notes.Select(WriteNote)]);
+            json["notes"] = WriteNotes(result.Notes);
         if (result.Call.Measure == LoopMargins)
         {
             json["gainCrossovers"] = new JsonArray([.. result.GainCrossovers.Select(WriteCrossover)]);
@@ -100,6 +100,8 @@ public static class MeasureCallJson
         reader.Finish();
         return call;
     }
+
+    internal static JsonArray WriteNotes(IReadOnlyList<Absence> notes) => new([.. notes.Select(WriteNote)]);
 
     private static JsonObject WriteNote(Absence note) => new() { ["code"] = note.Code, ["message"] = note.Sentence };
 
