@@ -1,5 +1,6 @@
 using ResponseLedger.Engine.Masks;
 using ResponseLedger.Records.Masks;
+using ResponseLedger.Records.Strict;
 
 namespace ResponseLedger.Records.Verdicts;
 
@@ -12,11 +13,33 @@ namespace ResponseLedger.Records.Verdicts;
 public sealed record StoredVerdict(Outcome Outcome, int? WorstIndex, double?[] Margins, short[] Outcomes, double?[] FrequenciesHz)
 {
     /// <summary>The compact form of an evaluation.</summary>
-    public static StoredVerdict From(Evaluation evaluation) => throw new NotImplementedException();
+    /// <exception cref="ArgumentException">A number is not finite.</exception>
+    public static StoredVerdict From(Evaluation evaluation)
+    {
+        ArgumentNullException.ThrowIfNull(evaluation);
+        return new StoredVerdict(
+            evaluation.Outcome,
+            evaluation.WorstIndex,
+            [.. evaluation.Criteria.Select(c => JsonNumber.FiniteOrAbsent(c.Margin))],
+            [.. evaluation.Criteria.Select(c => (short)c.Outcome)],
+            [.. evaluation.Criteria.Select(c => JsonNumber.FiniteOrAbsent(c.FrequencyHz))]);
+    }
 
     /// <summary>The worst criterion with its name and unit, without judging again; null for a mask without criteria.</summary>
     /// <exception cref="ArgumentException">The verdict is not of this mask.</exception>
-    public static WorstCriterion? WorstOf(MaskDocument mask, StoredVerdict verdict) => throw new NotImplementedException();
+    public static WorstCriterion? WorstOf(MaskDocument mask, StoredVerdict verdict)
+    {
+        ArgumentNullException.ThrowIfNull(mask);
+        ArgumentNullException.ThrowIfNull(verdict);
+        var criteria = mask.Mask.Limits.Count + mask.Mask.Requirements.Count;
+        if (verdict.Margins.Length != criteria || verdict.Outcomes.Length != criteria || verdict.FrequenciesHz.Length != criteria)
+            throw new ArgumentException($"The verdict has {verdict.Margins.Length} criteria, the mask {criteria}.", nameof(verdict));
+        if (verdict.WorstIndex is not { } index)
+            return null;
+
+        var (name, unit) = CriterionNames.At(mask.Mask, index);
+        return new WorstCriterion(name, (Outcome)verdict.Outcomes[index], verdict.FrequenciesHz[index], verdict.Margins[index], unit);
+    }
 }
 
 /// <summary>The criterion that decided a verdict.</summary>
