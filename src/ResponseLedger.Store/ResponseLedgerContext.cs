@@ -32,6 +32,7 @@ public sealed class ResponseLedgerContext(DbContextOptions<ResponseLedgerContext
     public DbSet<LotUnit> LotUnits => Set<LotUnit>();
     public DbSet<Disposition> Dispositions => Set<Disposition>();
     public DbSet<Decision> Decisions => Set<Decision>();
+    public DbSet<SecondSignature> SecondSignatures => Set<SecondSignature>();
     public DbSet<DecisionVerdict> DecisionVerdicts => Set<DecisionVerdict>();
     public DbSet<Reopening> Reopenings => Set<Reopening>();
     public DbSet<Run> Runs => Set<Run>();

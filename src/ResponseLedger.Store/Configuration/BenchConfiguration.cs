@@ -15,7 +15,7 @@ internal sealed class BenchConfiguration :
 {
     public void Configure(EntityTypeBuilder<Bench> builder)
     {
-        builder.ToTable("bench");
+        builder.ToTable("bench", table => table.HasCheckConstraint("ck_bench_name", "name <> ''"));
         builder.Property(b => b.Name).UseCollation(ResponseLedgerContext.ByteOrder);
         builder.HasIndex(b => b.Name).IsUnique();
     }
@@ -43,7 +43,7 @@ internal sealed class BenchConfiguration :
 
     public void Configure(EntityTypeBuilder<BenchToken> builder)
     {
-        builder.ToTable("bench_token");
+        builder.ToTable("bench_token", table => table.HasCheckConstraint("ck_bench_token_secret_hash", "octet_length(secret_hash) = 32"));
         builder.HasOne<Bench>().WithMany().HasForeignKey(t => t.BenchId).OnDelete(DeleteBehavior.Restrict);
     }
 

@@ -12,7 +12,12 @@ internal sealed class DeviceConfiguration :
 {
     public void Configure(EntityTypeBuilder<Device> builder)
     {
-        builder.ToTable("device");
+        builder.ToTable("device", table =>
+        {
+            table.HasCheckConstraint("ck_device_kind", "kind in ('transfer', 'loop')");
+            table.HasCheckConstraint("ck_device_critical_phase", "critical_phase_deg is null or (kind = 'loop' and critical_phase_deg in (-180, 0))");
+            table.HasCheckConstraint("ck_device_names", "part_number <> '' and revision <> ''");
+        });
         builder.Property(d => d.PartNumber).UseCollation(ResponseLedgerContext.ByteOrder);
         builder.Property(d => d.Revision).UseCollation(ResponseLedgerContext.ByteOrder);
         builder.HasIndex(d => new { d.PartNumber, d.Revision }).IsUnique();
@@ -20,7 +25,11 @@ internal sealed class DeviceConfiguration :
 
     public void Configure(EntityTypeBuilder<DeviceSetting> builder)
     {
-        builder.ToTable("device_setting");
+        builder.ToTable("device_setting", table =>
+        {
+            table.HasCheckConstraint("ck_device_setting_decision_rule", "decision_rule in ('simple', 'guarded', 'fourOutcomes')");
+            table.HasCheckConstraint("ck_device_setting_retests_allowed", "retests_allowed >= 0");
+        });
         builder.HasIndex(s => new { s.DeviceId, s.Number }).IsUnique();
         builder.HasOne<Device>().WithMany().HasForeignKey(s => s.DeviceId).OnDelete(DeleteBehavior.Restrict);
     }

@@ -29,10 +29,15 @@ internal sealed class MaskConfiguration :
 
     public void Configure(EntityTypeBuilder<MaskRevision> builder)
     {
-        builder.ToTable("mask_revision");
+        builder.ToTable("mask_revision", table =>
+        {
+            table.HasCheckConstraint("ck_mask_revision_number", "number >= 1");
+            table.HasCheckConstraint("ck_mask_revision_sha256", "sha256 = sha256(document)");
+        });
         builder.HasKey(r => r.MaskId);
         builder.HasIndex(r => new { r.ConditionId, r.Number }).IsUnique();
         builder.HasOne<MaskHead>().WithMany().HasForeignKey(r => r.MaskId).OnDelete(DeleteBehavior.Restrict);
+        builder.HasOne<Device>().WithMany().HasForeignKey(r => r.DeviceId).OnDelete(DeleteBehavior.Restrict);
         builder.HasOne<Condition>().WithMany().HasForeignKey(r => r.ConditionId).OnDelete(DeleteBehavior.Restrict);
     }
 }

@@ -13,7 +13,13 @@ internal sealed class RunConfiguration :
 {
     public void Configure(EntityTypeBuilder<Run> builder)
     {
-        builder.ToTable("run");
+        builder.ToTable("run", table =>
+        {
+            table.HasCheckConstraint("ck_run_purpose", "purpose in ('production', 'golden', 'through', 'check', 'study')");
+            table.HasCheckConstraint("ck_run_lot", "purpose <> 'production' or lot_id is not null");
+            table.HasCheckConstraint("ck_run_files_digest", "octet_length(files_digest) = 32");
+            table.HasCheckConstraint("ck_run_sender", "num_nonnulls(by_id, token_id) <= 1");
+        });
         builder.Property(r => r.ReceivedNo).UseIdentityAlwaysColumn();
         builder.HasIndex(r => r.ReceivedNo).IsUnique();
         builder.HasIndex(r => new { r.UnitId, r.LotId, r.Purpose, r.FilesDigest }).IsUnique().AreNullsDistinct(false);
@@ -24,17 +30,22 @@ internal sealed class RunConfiguration :
         builder.HasOne<Unit>().WithMany().HasForeignKey(r => r.UnitId).OnDelete(DeleteBehavior.Restrict);
         builder.HasOne<Lot>().WithMany().HasForeignKey(r => r.LotId).OnDelete(DeleteBehavior.Restrict);
         builder.HasOne<Bench>().WithMany().HasForeignKey(r => r.BenchId).OnDelete(DeleteBehavior.Restrict);
+        builder.HasOne<BenchToken>().WithMany().HasForeignKey(r => r.TokenId).OnDelete(DeleteBehavior.Restrict);
     }
 
     public void Configure(EntityTypeBuilder<StoredFile> builder)
     {
-        builder.ToTable("file");
+        builder.ToTable("file", table =>
+        {
+            table.HasCheckConstraint("ck_file_content", "octet_length(content) > 0");
+            table.HasCheckConstraint("ck_file_sha256", "sha256 = sha256(content)");
+        });
         builder.HasKey(f => f.Sha256);
     }
 
     public void Configure(EntityTypeBuilder<RunFile> builder)
     {
-        builder.ToTable("run_file");
+        builder.ToTable("run_file", table => table.HasCheckConstraint("ck_run_file_ordinal", "ordinal >= 0"));
         builder.HasKey(f => new { f.RunId, f.Ordinal });
         builder.HasIndex(f => f.Sha256);
         builder.HasOne<Run>().WithMany().HasForeignKey(f => f.RunId).OnDelete(DeleteBehavior.Restrict);
@@ -43,7 +54,7 @@ internal sealed class RunConfiguration :
 
     public void Configure(EntityTypeBuilder<RunAssignment> builder)
     {
-        builder.ToTable("run_assignment");
+        builder.ToTable("run_assignment", table => table.HasCheckConstraint("ck_run_assignment_number", "number >= 0"));
         builder.HasKey(a => new { a.RunId, a.Number });
         builder.HasIndex(a => new { a.LotId, a.UnitId, a.ConditionId });
         builder.HasIndex(a => a.UnitId);

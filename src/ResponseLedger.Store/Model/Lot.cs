@@ -62,6 +62,20 @@ public sealed class Decision : IFact
     public required string Reason { get; init; }
     public required byte[] Record { get; init; }
     public required byte[] Sha256 { get; init; }
+
+    /// <summary>Whether the device asked for two signers when this was signed: then it holds once a <see cref="SecondSignature"/> stands beside it.</summary>
+    public bool NeedsSecondSignature { get; init; }
+
+    public required DateTimeOffset At { get; init; }
+    public required Guid ById { get; init; }
+}
+
+/// <summary>The signature of a second person under a decision that needs two: its own canonical record, which names the decision's digest.</summary>
+public sealed class SecondSignature : IFact
+{
+    public required Guid DecisionId { get; init; }
+    public required byte[] Record { get; init; }
+    public required byte[] Sha256 { get; init; }
     public required DateTimeOffset At { get; init; }
     public required Guid ById { get; init; }
 }

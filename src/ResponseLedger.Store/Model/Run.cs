@@ -87,6 +87,9 @@ public sealed class Reading : IFact
     /// <summary>The through run's reading that this one is normalised by, or null.</summary>
     public Guid? ThroughReadingId { get; init; }
 
+    /// <summary>The bench's noise floor in dB that the reading went by: under it phase is absent. Null where none was stated.</summary>
+    public double? NoiseFloorDb { get; init; }
+
     public required byte[] GridSha256 { get; init; }
 
     /// <summary>The engine's sweep form as a number: which pair of planes the curve holds.</summary>
@@ -123,6 +126,11 @@ public sealed class Basis : IFact
     public required Guid ConditionId { get; init; }
     public required Guid MaskId { get; init; }
     public Guid? GoldenReadingId { get; init; }
+
+    /// <summary>The uncertainty of the golden run's bench that was counted in, or null.</summary>
+    public Guid? GoldenUncertaintyId { get; init; }
+
+    /// <summary>"simple", "guarded" or "fourOutcomes".</summary>
     public required string DecisionRule { get; init; }
     public required int EngineVersion { get; init; }
     public required DateTimeOffset At { get; init; }
