@@ -27,8 +27,16 @@ public enum Outcome
 /// <param name="Margin">Distance to the limit in <paramref name="Unit"/>, positive inside; null where there is none (then a reason is given, or the gain is exactly zero).</param>
 /// <param name="Unit">dB, deg, s, Hz, dB/decade or 1.</param>
 /// <param name="FrequencyHz">Where the least margin lies, or null.</param>
-/// <param name="Reason">Why the criterion is inconclusive or has no margin.</param>
-public sealed record CriterionResult(string Name, Outcome Outcome, double? Margin, string Unit, double? FrequencyHz, Absence? Reason);
+/// <param name="Reason">Why the criterion is inconclusive or has no margin; on a failed one, what else could not be judged.</param>
+/// <param name="Notes">Remarks that belong to the result, such as a suspect phase step in its span; null or empty for none.</param>
+public sealed record CriterionResult(
+    string Name,
+    Outcome Outcome,
+    double? Margin,
+    string Unit,
+    double? FrequencyHz,
+    Absence? Reason,
+    IReadOnlyList<Absence>? Notes = null);
 
 /// <summary>What a run came to against a mask.</summary>
 /// <param name="Outcome">The worst outcome of all criteria.</param>
