@@ -132,7 +132,7 @@ internal readonly struct CanonicalWriter(ArrayBufferWriter<byte> buffer)
     {
         if (value.TryGetValue(out double real))
             return real;
-        if (value.TryGetValue(out float single))
+        if (value.TryGetValue(out float single) && !float.IsFinite(single))
             return single;
         var text = value.ToJsonString();
         var number = double.Parse(text, NumberStyles.Float, CultureInfo.InvariantCulture);
