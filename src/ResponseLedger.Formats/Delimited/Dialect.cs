@@ -27,19 +27,22 @@ internal readonly record struct Dialect(char Delimiter, bool DecimalComma)
         _ => "blanks",
     };
 
-    /// <summary>Finds the dialect in which most lines are rows of numbers.</summary>
-    /// <returns>False when no line is a row of two numbers or more in any dialect.</returns>
+    /// <summary>Finds the dialect in which most lines are rows of numbers; where no line is, one in which they hold words too.</summary>
+    /// <returns>False when no line holds two numbers or more in any dialect.</returns>
     public static bool TryFind(ReadOnlySpan<char> text, CancellationToken ct, out Dialect dialect, out int firstRowLine, out int columnCount)
+        => TryFind(text, wordsToo: false, ct, out dialect, out firstRowLine, out columnCount)
+            || TryFind(text, wordsToo: true, ct, out dialect, out firstRowLine, out columnCount);
+
+    private static bool TryFind(ReadOnlySpan<char> text, bool wordsToo, CancellationToken ct, out Dialect dialect, out int firstRowLine, out int columnCount)
     {
         Span<int> score = stackalloc int[Known.Length];
-        Span<int> first = stackalloc int[Known.Length];
-        var counts = new Dictionary<int, int>[Known.Length];
-        for (int k = 0; k < counts.Length; k++)
-            counts[k] = [];
+        var rows = new Dictionary<int, (int Count, int FirstLine)>[Known.Length];
+        for (int k = 0; k < rows.Length; k++)
+            rows[k] = [];
         bool markSeen = false;
         int best = 0;
         var lines = new LineWalk(text);
-        while (lines.MoveNext() && score[best] < 2 * (markSeen ? EnoughRows : MostRows))
+        while (score[best] < 2 * (markSeen ? EnoughRows : MostRows) && lines.MoveNext())
         {
             if ((lines.Number & 1023) == 0)
                 ct.ThrowIfCancellationRequested();
@@ -48,13 +51,12 @@ internal readonly record struct Dialect(char Delimiter, bool DecimalComma)
                 continue;
             for (int k = 0; k < Known.Length; k++)
             {
-                int weight = Known[k].RowWeight(line, out int fields);
+                int weight = Known[k].RowWeight(line, wordsToo, out int fields);
                 if (weight == 0)
                     continue;
                 score[k] += weight;
-                counts[k][fields] = counts[k].GetValueOrDefault(fields) + 1;
-                if (first[k] == 0)
-                    first[k] = lines.Number;
+                (int count, int firstLine) = rows[k].GetValueOrDefault(fields, (0, lines.Number));
+                rows[k][fields] = (count + 1, firstLine);
                 if (score[k] > score[best])
                     best = k;
                 markSeen |= line.ContainsAny('.', ',');
@@ -64,21 +66,24 @@ internal readonly record struct Dialect(char Delimiter, bool DecimalComma)
         for (int k = Known.Length - 1; k >= 0; k--)
             best = score[k] >= score[best] ? k : best;
         dialect = Known[best];
-        firstRowLine = first[best];
-        columnCount = counts[best].Count == 0 ? 0 : counts[best].MaxBy(c => c.Value).Key;
+        (columnCount, (_, firstRowLine)) = rows[best].Count == 0 ? new(0, (0, 0)) : rows[best].MaxBy(r => r.Value.Count);
         return score[best] > 0;
     }
 
     // 2 for a row of numbers, 1 where a number groups thousands (it will be refused by name), else 0.
-    private int RowWeight(ReadOnlySpan<char> line, out int count)
+    private int RowWeight(ReadOnlySpan<char> line, bool wordsToo, out int count)
     {
         int numbers = 0;
+        int words = 0;
         int weight = 2;
         var fields = new Fields(line, Delimiter);
         while (fields.MoveNext())
         {
             switch (NumberText.KindOf(fields.Current, DecimalComma))
             {
+                case NumberKind.Text when wordsToo:
+                    words++;
+                    break;
                 case NumberKind.Text:
                     count = 0;
                     return 0;
@@ -95,6 +100,6 @@ internal readonly record struct Dialect(char Delimiter, bool DecimalComma)
         }
 
         count = fields.CountWithoutTrailing;
-        return numbers >= 2 && !fields.Unclosed ? weight : 0;
+        return numbers >= 2 && words <= numbers && !fields.Unclosed ? weight : 0;
     }
 }

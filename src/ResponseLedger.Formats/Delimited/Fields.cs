@@ -25,6 +25,9 @@ internal ref struct Fields
     /// <summary>Whether a quotation mark did not close.</summary>
     public bool Unclosed { get; private set; }
 
+    /// <summary>Whether the current field is the line's last.</summary>
+    public readonly bool IsLast => done;
+
     /// <summary>How many fields the line has when a delimiter at its end is not taken for another one; valid after the walk.</summary>
     public readonly int CountWithoutTrailing => Count > 1 && Current.IsEmpty && !Quoted ? Count - 1 : Count;
 

@@ -95,7 +95,8 @@ internal sealed class RowTable
             NumberKind kind = NumberText.Read(fields.Current, layout.Dialect.DecimalComma, out double value);
             if (layout.Dialect.DecimalComma && !commaIsDecimal)
                 WatchComma(fields.Current, number);
-            if (kind == NumberKind.Empty && fields.Count == fields.CountWithoutTrailing + 1)
+            // An empty field at the end is a delimiter too many or a row cut short; the count below tells which.
+            if (kind == NumberKind.Empty && fields.IsLast && !fields.Quoted)
                 continue;
             good &= Judge(kind, slot, value, fields.Current, number, fields.Count);
             row[slot] = value;

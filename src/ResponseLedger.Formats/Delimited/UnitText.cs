@@ -107,7 +107,7 @@ internal sealed record UnitText(string Name, UnitFamily Family, double Multiply 
 
     private static (string Base, int Power)? Prefixed(string text)
     {
-        foreach (string known in (ReadOnlySpan<string>)["v", "a", "pa", "ohm", "siemens", "n", "m/s", "m", "g", "w", "c", "t"])
+        foreach (string known in (ReadOnlySpan<string>)["v", "pa", "a", "ohm", "siemens", "n", "m/s", "m", "g", "w", "c", "t"])
         {
             if (!text.EndsWith(known, StringComparison.Ordinal))
                 continue;
