@@ -5,7 +5,7 @@ try
     var builder = WebApplication.CreateBuilder(new WebApplicationOptions { Args = args, ContentRootPath = AppContext.BaseDirectory });
     await using var house = await House.OpenAsync(builder);
     var app = builder.Build();
-    house.Use(app);
+    House.Use(app);
     await app.RunAsync();
     return Environment.ExitCode;
 }

@@ -23,8 +23,8 @@ internal sealed class WebRoot
     /// <summary>Whether files may be cached for ever under their version; not while somebody edits the source.</summary>
     public bool IsImmutable => !fromSource;
 
-    /// <summary>The content security policy; it names the hash of the shell's import map, where it has one.</summary>
-    public string Policy => Shell.Policy;
+    /// <summary>The content security policy of the shell as last sent; it names the hash of the import map, where there is one. Set on every answer, so it looks at no file.</summary>
+    public string Policy => (kept?.Shell ?? Shell).Policy;
 
     /// <summary>The page that all addresses of the pages begin with.</summary>
     public Shell Shell

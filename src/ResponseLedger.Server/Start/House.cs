@@ -28,7 +28,7 @@ internal sealed class House : IAsyncDisposable
     public static async Task<House> OpenAsync(WebApplicationBuilder builder)
     {
         var settings = StartSettings.From(builder.Configuration);
-        var store = await OpenStore.OpenAsync(settings);
+        var store = await OpenStore.OpenAsync(settings, builder.Configuration);
         try
         {
             Listen(builder);
@@ -55,7 +55,7 @@ internal sealed class House : IAsyncDisposable
     }
 
     /// <summary>Lays the pipeline and maps every route.</summary>
-    public void Use(WebApplication app)
+    public static void Use(WebApplication app)
     {
         app.UseMiddleware<SecurityHeaders>();
         app.UseExceptionHandler();

@@ -1,4 +1,5 @@
 using Npgsql;
+using ResponseLedger.Store.Embedded;
 
 namespace ResponseLedger.Server.Start;
 
@@ -16,15 +17,23 @@ internal sealed class OpenStore : IAsyncDisposable
     /// <summary>Where it is.</summary>
     public StoreAddress Address { get; }
 
-    /// <summary>Opens it.</summary>
-    public static async Task<OpenStore> OpenAsync(StartSettings settings)
+    /// <summary>Opens it: starts the embedded one, or takes the address that was given.</summary>
+    /// <exception cref="EmbeddedPostgresException">The embedded one does not start; the message says what to do.</exception>
+    public static async Task<OpenStore> OpenAsync(StartSettings settings, IConfiguration configuration)
     {
-        await Task.CompletedTask;
-        if (settings.ConnectionString is not { } connectionString)
-            throw new StartFailure("There is no connection string. Set ConnectionStrings__Ledger.");
+        if (settings.ConnectionString is { } given)
+        {
+            var role = settings.OwnerConnectionString is null ? null : new NpgsqlConnectionStringBuilder(given).Username;
+            return new OpenStore(new StoreAddress(given, settings.OwnerConnectionString ?? given, role), null);
+        }
 
-        var role = settings.OwnerConnectionString is null ? null : new NpgsqlConnectionStringBuilder(connectionString).Username;
-        return new OpenStore(new StoreAddress(connectionString, settings.OwnerConnectionString ?? connectionString, role), null);
+        // The host, whose log this will be, is not built before the store's address is known; this factory lives as long as the store.
+        var loggers = LoggerFactory.Create(logging => logging.AddConfiguration(configuration.GetSection("Logging")).AddConsole());
+        var postgres = await EmbeddedPostgres.StartAsync(
+            new EmbeddedPostgresOptions { DataFolder = settings.DataFolder, Logger = loggers.CreateLogger("ResponseLedger.Store") }, CancellationToken.None);
+        var database = settings.Demo ? StartSettings.DemoDatabase : StartSettings.RealDatabase;
+        return new OpenStore(
+            new StoreAddress(postgres.ServerConnectionString(database), postgres.OwnerConnectionString(database), EmbeddedPostgres.ServerRoleName), postgres);
     }
 
     /// <summary>Stops the embedded store; one by connection string goes on.</summary>

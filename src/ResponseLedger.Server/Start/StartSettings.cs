@@ -1,4 +1,5 @@
 using Npgsql;
+using ResponseLedger.Store.Embedded;
 
 namespace ResponseLedger.Server.Start;
 
@@ -49,7 +50,7 @@ internal sealed record StartSettings(
         return new StartSettings(
             connection is null ? null : InDatabase(connection, demo),
             owner is null ? null : InDatabase(owner, demo),
-            Given(configuration["RESPONSELEDGER_DATA"]) ?? UsualDataFolder(),
+            Given(configuration[EmbeddedPostgresOptions.DataFolderVariable]) ?? EmbeddedPostgresOptions.DefaultDataFolder(),
             demo,
             email ?? UsualAdminEmail,
             password);
@@ -65,11 +66,6 @@ internal sealed record StartSettings(
             : $"{named}_{DemoDatabase}";
         return builder.ConnectionString;
     }
-
-    private static string UsualDataFolder()
-        => OperatingSystem.IsLinux() && Environment.UserName == "root"
-            ? "/var/lib/responseledger"
-            : Path.Combine(Environment.GetFolderPath(Environment.SpecialFolder.LocalApplicationData, Environment.SpecialFolderOption.DoNotVerify), "responseledger");
 
     private static string? Given(string? value) => string.IsNullOrWhiteSpace(value) ? null : value;
 }
