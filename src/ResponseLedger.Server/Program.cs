@@ -1,10 +1,19 @@
 using ResponseLedger.Server.Start;
 
-var builder = WebApplication.CreateBuilder(args);
-await using var house = await House.OpenAsync(builder);
-var app = builder.Build();
-house.Use(app);
-await app.RunAsync();
+try
+{
+    var builder = WebApplication.CreateBuilder(new WebApplicationOptions { Args = args, ContentRootPath = AppContext.BaseDirectory });
+    await using var house = await House.OpenAsync(builder);
+    var app = builder.Build();
+    House.Use(app);
+    await app.RunAsync();
+    return Environment.ExitCode;
+}
+catch (Exception failure) when (StartFailure.Tell(failure) is { } message)
+{
+    await Console.Error.WriteLineAsync(message);
+    return 1;
+}
 
 /// <summary>The entry point; public so that tests can start the server.</summary>
 public partial class Program;

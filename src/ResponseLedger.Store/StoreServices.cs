@@ -34,13 +34,17 @@ public static class StoreServices
             .UseNpgsql(dataSource, npgsql => npgsql.MigrationsAssembly(MigrationsAssembly).EnableRetryOnFailure().SetPostgresVersion(15, 0))
             .UseSnakeCaseNamingConvention();
 
-    private static string Capped(string connectionString)
+    internal static string Capped(string connectionString)
     {
         var builder = new NpgsqlConnectionStringBuilder(connectionString);
-        if (!builder.ContainsKey("Maximum Pool Size"))
+        if (!builder.ShouldSerialize("Maximum Pool Size"))
             builder.MaxPoolSize = MaxPoolSize;
-        if (!builder.ContainsKey("Application Name"))
+        if (!builder.ShouldSerialize("Application Name"))
             builder.ApplicationName = "ResponseLedger";
+
+        // A peer that vanished without a word is found out within a minute.
+        if (!builder.ShouldSerialize("Keepalive"))
+            builder.KeepAlive = 30;
         return builder.ConnectionString;
     }
 }

@@ -1,11 +1,128 @@
+using FluentValidation;
+using Microsoft.AspNetCore.Http.Features;
+using Microsoft.Extensions.DependencyInjection.Extensions;
+using ResponseLedger.Server.Benches;
+using ResponseLedger.Server.Devices;
+using ResponseLedger.Server.Http;
+using ResponseLedger.Server.Lots;
+using ResponseLedger.Server.Masks;
+using ResponseLedger.Server.People;
+using ResponseLedger.Server.Runs;
+using ResponseLedger.Server.SignOff;
+using ResponseLedger.Server.Trail;
+using ResponseLedger.Store;
+
 namespace ResponseLedger.Server.Start;
 
-/// <summary>Puts the server together: store, people, features, in this order.</summary>
+/// <summary>Puts the server together: store, people, features, in this order; holds the embedded store for as long as the server runs.</summary>
 internal sealed class House : IAsyncDisposable
 {
-    public static Task<House> OpenAsync(WebApplicationBuilder builder) => throw new NotImplementedException();
+    private const string UsualAddress = "http://127.0.0.1:5080";
 
-    public void Use(WebApplication app) => throw new NotImplementedException();
+    private readonly OpenStore store;
 
-    public ValueTask DisposeAsync() => throw new NotImplementedException();
+    private House(OpenStore store) => this.store = store;
+
+    /// <summary>Opens the store and registers everything. Nothing listens yet.</summary>
+    /// <exception cref="StartFailure">A setting cannot stand.</exception>
+    public static async Task<House> OpenAsync(WebApplicationBuilder builder)
+    {
+        var settings = StartSettings.From(builder.Configuration);
+        var store = await OpenStore.OpenAsync(settings, builder.Configuration);
+        try
+        {
+            Listen(builder);
+            var services = builder.Services;
+            services.TryAddSingleton(TimeProvider.System);
+            services.AddSingleton(settings);
+            services.AddSingleton(store.Address);
+            services.AddSingleton<Readiness>();
+            services.AddLedgerStore(store.Address.ConnectionString);
+
+            AddHttp(services);
+            PeopleServices.Add(services, builder.Configuration);
+            AddFeatures(services);
+
+            services.AddHostedService<Opening>();
+            services.AddHostedService<Sequencing>();
+            return new House(store);
+        }
+        catch
+        {
+            await store.DisposeAsync();
+            throw;
+        }
+    }
+
+    /// <summary>Lays the pipeline and maps every route.</summary>
+    public static void Use(WebApplication app)
+    {
+        app.UseMiddleware<SecurityHeaders>();
+        app.UseExceptionHandler();
+        app.UseStatusCodePages(EmptyAnswers.FillAsync);
+        app.UseMiddleware<WebFiles>();
+        app.UseRouting();
+        app.UseMiddleware<RequestGuard>();
+        app.UseMiddleware<WaitUntilReady>();
+        app.UseAuthentication();
+        app.UseRateLimiter();
+        app.UseAuthorization();
+
+        app.MapHealth();
+        app.MapShell();
+        app.MapOpenApi("/openapi/{documentName}.json").AllowAnonymous().ExcludeFromDescription();
+        var api = app.MapGroup("/api").WithReadAsDefault();
+        AboutRoutes.Map(api);
+        PeopleRoutes.Map(api);
+        SessionRoutes.Map(api);
+        TokensRoutes.Map(api);
+        DevicesRoutes.Map(api);
+        MasksRoutes.Map(api);
+        BenchesRoutes.Map(api);
+        LotsRoutes.Map(api);
+        SignOffRoutes.Map(api);
+        RunsRoutes.Map(api);
+        TrailRoutes.Map(api);
+    }
+
+    /// <summary>Stops the embedded store.</summary>
+    public ValueTask DisposeAsync() => store.DisposeAsync();
+
+    private static void Listen(WebApplicationBuilder builder)
+    {
+        var told = new[] { WebHostDefaults.ServerUrlsKey, "HTTP_PORTS", "HTTPS_PORTS" }.Any(key => !string.IsNullOrEmpty(builder.Configuration[key]))
+            || builder.Configuration.GetSection("Kestrel:Endpoints").Exists();
+        if (!told)
+            builder.WebHost.UseUrls(UsualAddress);
+        builder.WebHost.ConfigureKestrel(kestrel =>
+        {
+            kestrel.AddServerHeader = false;
+            kestrel.Limits.MaxRequestBodySize = RequestGuard.UsualBodyBytes;
+        });
+    }
+
+    private static void AddHttp(IServiceCollection services)
+    {
+        services.ConfigureHttpJsonOptions(options => Json.Configure(options.SerializerOptions));
+        services.Configure<RouteHandlerOptions>(options => options.ThrowOnBadRequest = true);
+        services.Configure<FormOptions>(options => options.MultipartBodyLengthLimit = RequestGuard.UploadBodyBytes);
+        services.AddSingleton<IProblemDetailsWriter, ProblemWriter>();
+        services.AddProblemDetails();
+        services.AddExceptionHandler<RefusalMapping>();
+        services.AddSingleton<WebRoot>();
+        Description.Add(services);
+        foreach (var found in AssemblyScanner.FindValidatorsInAssembly(typeof(House).Assembly, includeInternalTypes: true))
+            services.AddSingleton(found.InterfaceType, found.ValidatorType);
+    }
+
+    private static void AddFeatures(IServiceCollection services)
+    {
+        DevicesRoutes.AddServices(services);
+        MasksRoutes.AddServices(services);
+        BenchesRoutes.AddServices(services);
+        LotsRoutes.AddServices(services);
+        SignOffRoutes.AddServices(services);
+        RunsRoutes.AddServices(services);
+        TrailRoutes.AddServices(services);
+    }
 }

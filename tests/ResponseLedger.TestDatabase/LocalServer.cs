@@ -1,0 +1,41 @@
+using ResponseLedger.Store.Embedded;
+
+namespace ResponseLedger.TestDatabase;
+
+/// <summary>One cluster for this test process, from the machine's PostgreSQL programs, in a temporary folder.</summary>
+internal sealed class LocalServer : TestServer
+{
+    private const string Prefix = "responseledger-test-";
+
+    private readonly string folder;
+    private readonly EmbeddedPostgres postgres;
+
+    private LocalServer(string folder, EmbeddedPostgres postgres)
+    {
+        this.folder = folder;
+        this.postgres = postgres;
+    }
+
+    public override string ServerRoleName => EmbeddedPostgres.ServerRoleName;
+
+    public static async Task<LocalServer> StartAsync()
+    {
+        // What a killed test process left. A young folder may be another's that has not taken hold of it yet.
+        var old = TimeProvider.System.GetUtcNow().UtcDateTime.AddMinutes(-5);
+        foreach (var abandoned in Directory.GetDirectories(Path.GetTempPath(), Prefix + "*").Where(f => Directory.GetCreationTimeUtc(f) < old))
+            await EmbeddedPostgres.TryRemoveAsync(abandoned, CancellationToken.None);
+        var folder = Path.Combine(Path.GetTempPath(), Prefix + Guid.CreateVersion7(TimeProvider.System.GetUtcNow()).ToString("N"));
+        var options = new EmbeddedPostgresOptions { DataFolder = folder, Databases = [], MaxConnections = 400, FlushNewCluster = false };
+        return new LocalServer(folder, await EmbeddedPostgres.StartAsync(options, CancellationToken.None));
+    }
+
+    public override string OwnerConnectionString(string database) => postgres.OwnerConnectionString(database);
+
+    public override string ServerConnectionString(string database) => postgres.ServerConnectionString(database);
+
+    public override async ValueTask DisposeAsync()
+    {
+        await postgres.DisposeAsync();
+        Directory.Delete(folder, recursive: true);
+    }
+}
