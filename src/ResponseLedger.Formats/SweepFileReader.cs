@@ -1,3 +1,7 @@
+using ResponseLedger.Formats.Delimited;
+using ResponseLedger.Formats.Text;
+using ResponseLedger.Formats.Touchstone;
+
 namespace ResponseLedger.Formats;
 
 /// <summary>Reads a sweep file of a bench: delimited text in any common dialect, or Touchstone 1.1 and 2.0.</summary>
@@ -19,5 +23,14 @@ public static class SweepFileReader
     /// <param name="ct">Stops the reading of a large file.</param>
     /// <exception cref="OperationCanceledException">The reading was stopped.</exception>
     public static FileReading Read(ReadOnlyMemory<byte> content, string fileName, ColumnChoices? chosen = null, CancellationToken ct = default)
-        => throw new NotImplementedException();
+    {
+        ArgumentNullException.ThrowIfNull(fileName);
+        ct.ThrowIfCancellationRequested();
+        bool touchstone = TouchstoneName.Recognises(fileName, out int? ports);
+        DecodedText text = DecodedText.Of(content.Span);
+        touchstone |= text.Issue is null && TouchstoneName.RecognisesContent(text.Characters);
+        if (text.Issue is { } issue)
+            return new FileReading(null, touchstone ? TouchstoneReader.Name : DelimitedReader.Name, Version, [], null, null, [], [], [issue], 1);
+        return touchstone ? TouchstoneReader.Read(text, ports, chosen?.Parameter, ct) : DelimitedReader.Read(text, chosen, ct);
+    }
 }

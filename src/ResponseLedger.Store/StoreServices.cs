@@ -2,6 +2,7 @@ using Microsoft.EntityFrameworkCore;
 using Microsoft.Extensions.DependencyInjection;
 using Npgsql;
 using ResponseLedger.Store.Acts;
+using ResponseLedger.Store.Intake;
 using ResponseLedger.Store.Judging;
 
 namespace ResponseLedger.Store;
@@ -25,6 +26,9 @@ public static class StoreServices
         services.AddSingleton<ActRunner>();
         services.AddSingleton<LedgerSequencer>();
         services.AddSingleton<JudgingMaterial>();
+        services.AddSingleton<ColumnMemory>();
+        services.AddSingleton<RunIntake>();
+        services.AddSingleton<RunVerdicts>();
         return services;
     }
 

@@ -1,6 +1,7 @@
 using Microsoft.EntityFrameworkCore;
 using ResponseLedger.Records.Verdicts;
 using ResponseLedger.Store.Acts;
+using ResponseLedger.Store.Model;
 
 namespace ResponseLedger.Store.Judging;
 
@@ -22,16 +23,21 @@ public static class CurrentBases
     public static async Task<CurrentBasis?> FindAsync(ResponseLedgerContext db, Guid conditionId, CancellationToken cancellationToken)
     {
         ArgumentNullException.ThrowIfNull(db);
-        var named = await NamedAsync(db, conditionId, cancellationToken);
-        if (named is null)
-            return null;
+        return await Query(db, db.Conditions.Where(c => c.Id == conditionId)).SingleOrDefaultAsync(cancellationToken);
+    }
 
-        var id = await db.Bases
-            .Where(b => b.ConditionId == conditionId && b.MaskId == named.MaskId && b.GoldenReadingId == named.GoldenReadingId
-                && b.DecisionRule == named.DecisionRule && b.EngineVersion == Judge.EngineVersion)
-            .Select(b => (Guid?)b.Id)
-            .SingleOrDefaultAsync(cancellationToken);
-        return id is { } found ? new CurrentBasis(found, conditionId, named.MaskId, named.MaskRevision, named.GoldenReadingId) : null;
+    /// <summary>The bases in force of these conditions; those without a released mask are left out. To be composed: one round trip.</summary>
+    public static IQueryable<CurrentBasis> Query(ResponseLedgerContext db, IQueryable<Condition> conditions)
+    {
+        ArgumentNullException.ThrowIfNull(db);
+        return
+            from condition in conditions
+            from mask in db.MaskRevisions.Where(m => m.ConditionId == condition.Id).OrderByDescending(m => m.Number).Take(1)
+            let golden = db.GoldenChoices.Where(g => g.ConditionId == condition.Id).OrderByDescending(g => g.Number).Select(g => (Guid?)g.ReadingId).FirstOrDefault()
+            let rule = db.DeviceSettings.Where(s => s.DeviceId == condition.DeviceId).OrderByDescending(s => s.Number).Select(s => s.DecisionRule).First()
+            from basis in db.Bases.Where(b => b.ConditionId == condition.Id && b.MaskId == mask.MaskId && b.GoldenReadingId == golden
+                && b.DecisionRule == rule && b.EngineVersion == Judge.EngineVersion)
+            select new CurrentBasis(basis.Id, condition.Id, mask.MaskId, mask.Number, basis.GoldenReadingId);
     }
 
     /// <summary>Makes the basis row that is in force after what the act has added; null where no mask is released. Saves what the act has added so far.</summary>

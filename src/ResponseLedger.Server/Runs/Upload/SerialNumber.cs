@@ -1,0 +1,42 @@
+using System.Text.RegularExpressions;
+
+namespace ResponseLedger.Server.Runs.Upload;
+
+/// <summary>Serial numbers: what one may look like, and how one is found in a file's name.</summary>
+internal static class SerialNumber
+{
+    public const string Rule = "A serial number has 1 to 100 characters, none of them a control character.";
+
+    private const int Longest = 100;
+    private static readonly TimeSpan PatternPatience = TimeSpan.FromMilliseconds(100);
+
+    /// <summary>Whether a text can be a serial number.</summary>
+    public static bool IsSound(string serial) => serial.Trim() is { Length: >= 1 and <= Longest } text && !text.Any(char.IsControl);
+
+    /// <summary>
+    /// The serial number in a file's name: by the bench's pattern (its group "serial", or the whole match), else the part before
+    /// the first underscore, else the name without its extension. Null when there is none.
+    /// </summary>
+    public static string? In(string fileName, string? benchPattern)
+    {
+        var cut = fileName.IndexOf('_', StringComparison.Ordinal);
+        var serial = benchPattern is not null ? ByPattern(fileName, benchPattern)
+            : cut < 0 ? Path.GetFileNameWithoutExtension(fileName)
+            : fileName[..cut];
+        return serial is not null && IsSound(serial) ? serial.Trim() : null;
+    }
+
+    private static string? ByPattern(string fileName, string pattern)
+    {
+        try
+        {
+            var match = Regex.Match(fileName, pattern, RegexOptions.CultureInvariant, PatternPatience);
+            return !match.Success ? null : match.Groups["serial"] is { Success: true } group ? group.Value : match.Value;
+        }
+        catch (Exception exception) when (exception is RegexMatchTimeoutException or ArgumentException)
+        {
+            // A pattern that takes too long or does not parse finds nothing; the refusal names it.
+            return null;
+        }
+    }
+}
