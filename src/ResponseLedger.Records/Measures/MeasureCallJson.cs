@@ -47,7 +47,7 @@ public static class MeasureCallJson
         }
 
         if (result.Notes.Count > 0)
-            json["notes"] = new JsonArray([.. result.Notes.Select(WriteNote)]);
+            json["notes"] = WriteNotes(result.Notes);
         if (result.Call.Measure == LoopMargins)
         {
             json["gainCrossovers"] = new JsonArray([.. result.GainCrossovers.Select(WriteCrossover)]);
@@ -58,7 +58,7 @@ public static class MeasureCallJson
     }
 
     /// <summary>One text for equal calls, whatever the order of their parameters.</summary>
-    internal static string KeyOf(MeasureCall call) => Convert.ToBase64String(CanonicalJson.Serialize(Write(call)));
+    public static string KeyOf(MeasureCall call) => Convert.ToBase64String(CanonicalJson.Serialize(Write(call)));
 
     /// <summary>Reads the members <c>measure</c> and <c>parameters</c> of an object that may have others.</summary>
     internal static MeasureCall? Read(ObjectReader reader)
@@ -100,6 +100,8 @@ public static class MeasureCallJson
         reader.Finish();
         return call;
     }
+
+    internal static JsonArray WriteNotes(IReadOnlyList<Absence> notes) => new([.. notes.Select(WriteNote)]);
 
     private static JsonObject WriteNote(Absence note) => new() { ["code"] = note.Code, ["message"] = note.Sentence };
 

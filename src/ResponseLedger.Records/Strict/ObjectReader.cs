@@ -15,6 +15,8 @@ internal sealed class ObjectReader
     /// <summary>Longest reason or statement, in UTF-16 code units.</summary>
     public const int LongestProse = 10_000;
 
+    private const string NotUnicode = "This text is not Unicode: half of a surrogate pair, or a wrong byte.";
+
     private readonly Dictionary<string, JsonElement> members = new(StringComparer.Ordinal);
     private readonly HashSet<string> asked = new(StringComparer.Ordinal);
 
@@ -47,11 +49,24 @@ internal sealed class ObjectReader
             }
             catch (InvalidOperationException)
             {
-                problems.Add(path, "A member name holds half of a surrogate pair.");
+                problems.Add(path, $"A member name is at fault. {NotUnicode}");
             }
         }
 
         return reader;
+    }
+
+    /// <summary>The text of a JSON string; null where it is not Unicode, which JSON's own reader finds only now.</summary>
+    public static string? TextOf(JsonElement json)
+    {
+        try
+        {
+            return json.GetString();
+        }
+        catch (InvalidOperationException)
+        {
+            return null;
+        }
     }
 
     public string PathOf(string name) => Path.Length == 0 ? name : $"{Path}.{name}";
@@ -88,18 +103,10 @@ internal sealed class ObjectReader
             return null;
         }
 
-        try
-        {
-            var text = json.GetString()!;
-            if (text.Length <= longest)
-                return text;
-            Add(name, $"This text is longer than {longest} characters.");
-        }
-        catch (InvalidOperationException)
-        {
-            Add(name, "This text holds half of a surrogate pair.");
-        }
-
+        var text = TextOf(json);
+        if (text?.Length <= longest)
+            return text;
+        Add(name, text is null ? NotUnicode : $"This text is longer than {longest} characters.");
         return null;
     }
 

@@ -57,7 +57,7 @@ internal static class ObjectReaderValues
     /// <summary>Reads an item of an array of hashes.</summary>
     public static byte[]? Sha256(JsonElement json, string path, ProblemList problems)
     {
-        if (json.ValueKind == JsonValueKind.String && Sha256Of(json.GetRawText().Trim('"')) is { } hash)
+        if (json.ValueKind == JsonValueKind.String && Sha256Of(ObjectReader.TextOf(json)) is { } hash)
             return hash;
         problems.Add(path, HashExpected);
         return null;
@@ -65,6 +65,6 @@ internal static class ObjectReaderValues
 
     private const string HashExpected = "Expected a SHA-256 as 64 hexadecimal digits in lower case.";
 
-    private static byte[]? Sha256Of(string text)
-        => text.Length == 2 * SHA256.HashSizeInBytes && text.All(char.IsAsciiHexDigitLower) ? Convert.FromHexString(text) : null;
+    private static byte[]? Sha256Of(string? text)
+        => text is { Length: 2 * SHA256.HashSizeInBytes } && text.All(char.IsAsciiHexDigitLower) ? Convert.FromHexString(text) : null;
 }

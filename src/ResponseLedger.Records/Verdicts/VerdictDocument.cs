@@ -10,7 +10,7 @@ namespace ResponseLedger.Records.Verdicts;
 /// <summary>A verdict as people and programs read it, in JSON.</summary>
 public static class VerdictDocument
 {
-    /// <summary>Writes <c>{outcome, worst, criteria, measures, maskRevision, engine}</c>; codes stand in <c>reason</c>, sentences in <c>explanation</c>.</summary>
+    /// <summary>Writes <c>{outcome, worst, criteria, measures, maskRevision, engine}</c>; codes stand in <c>reason</c>, sentences in <c>explanation</c>; a criterion with remarks has <c>notes</c>.</summary>
     /// <param name="evaluation">The evaluation, by this mask.</param>
     /// <param name="mask">The mask, whose requirements name the measures.</param>
     /// <param name="maskRevision">Number of the released revision.</param>
@@ -63,6 +63,8 @@ public static class VerdictDocument
             ["frequencyHz"] = JsonNumber.Of(criterion.FrequencyHz),
         };
         AddReason(json, criterion);
+        if (criterion.Notes is { Count: > 0 } notes)
+            json["notes"] = MeasureCallJson.WriteNotes(notes);
         return json;
     }
 

@@ -1,0 +1,23 @@
+namespace ResponseLedger.Records.Tests.Decisions;
+
+/// <summary>The bytes of <see cref="SampleDecision"/>, written down apart from the code under test; the digest was computed by another program.</summary>
+internal static class SampleDecisionBytes
+{
+    public const string Sha256 = "ef1e60876921eb31157fde25779f7d8267a27af184df8389c26eecd4e97ab3ba";
+
+    /// <summary>One line of the canonical text a line here, to be read without the line ends.</summary>
+    public static string Text { get; } = """
+        {"conditions":[
+        {"conditionId":"01890a5d-ac96-774b-bcce-000000000011","goldenFilesSha256":"bbbbbbbbbbbbbbbbbbbbbbbbbbbbbbbbbbbbbbbbbbbbbbbbbbbbbbbbbbbbbbbb","goldenReadingId":"01890a5d-ac96-774b-bcce-000000000032","goldenRunId":"01890a5d-ac96-774b-bcce-000000000031","maskRevision":3,"maskRevisionId":"01890a5d-ac96-774b-bcce-000000000021","maskSha256":"aaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaa","name":"gain 10"},
+        {"conditionId":"01890a5d-ac96-774b-bcce-000000000010","goldenFilesSha256":null,"goldenReadingId":null,"goldenRunId":null,"maskRevision":1,"maskRevisionId":"01890a5d-ac96-774b-bcce-000000000020","maskSha256":"cccccccccccccccccccccccccccccccccccccccccccccccccccccccccccccccc","name":"standard"}],
+        "counts":{"failed":1,"inconclusive":0,"passed":1,"retests":1,"tested":1,"units":2,"withdrawn":0},
+        "decision":"approveWithConcession","decisionId":"01890a5d-ac96-774b-bcce-000000000001","device":{"deviceId":"01890a5d-ac96-774b-bcce-000000000003","kind":"transfer","partNumber":"AAF-10","revision":"B"},"engineVersion":1,"format":"responseledger.decision/1",
+        "lot":{"decisionOrdinal":1,"lotId":"01890a5d-ac96-774b-bcce-000000000002","number":"L-0042","size":2},"meaning":"I have reviewed the evidence and release this lot.","reason":"SN-2 is for the lab's own use.","recommendation":{"decision":null,"sentence":"One unit does not pass."},"rule":{"code":"simpleAcceptance","statement":"A value on the limit passes; at the limit the risk of a false decision is up to 50 %."},"signedAt":"2026-03-01T09:30:00.123456Z","signer":{"email":"ina@lab.example","name":"Ina Øst","personId":"01890a5d-ac96-774b-bcce-000000000004"},
+        "units":[{"disposition":null,"otherRuns":[{"cause":"fixture","conditionId":"01890a5d-ac96-774b-bcce-000000000010","files":["2222222222222222222222222222222222222222222222222222222222222222"],"measuredAt":"2026-02-28T07:00:00.000000Z","reason":"The clip was loose.","receivedAt":"2026-02-28T07:00:01.000000Z","runId":"01890a5d-ac96-774b-bcce-000000000052","standing":"invalidated"},{"cause":null,"conditionId":"01890a5d-ac96-774b-bcce-000000000010","files":["3333333333333333333333333333333333333333333333333333333333333333"],"measuredAt":"2026-02-28T09:00:00.000000Z","reason":"An earlier run counts.","receivedAt":"2026-02-28T09:00:01.000000Z","runId":"01890a5d-ac96-774b-bcce-000000000053","standing":"retest"}],"outcome":"pass","runs":[
+        {"conditionId":"01890a5d-ac96-774b-bcce-000000000011","files":["ffffffffffffffffffffffffffffffffffffffffffffffffffffffffffffffff","eeeeeeeeeeeeeeeeeeeeeeeeeeeeeeeeeeeeeeeeeeeeeeeeeeeeeeeeeeeeeeee"],"measuredAt":"2026-02-28T08:00:00.000000Z","outcome":"pass","readingId":"01890a5d-ac96-774b-bcce-000000000061","receivedAt":"2026-02-28T08:00:01.500000Z","runId":"01890a5d-ac96-774b-bcce-000000000051","verdictId":"01890a5d-ac96-774b-bcce-000000000071","worst":{"criterion":"top","frequencyHz":500,"margin":0.25,"unit":"dB"}},
+        {"conditionId":"01890a5d-ac96-774b-bcce-000000000010","files":["1111111111111111111111111111111111111111111111111111111111111111"],"measuredAt":"2026-02-28T08:01:00.000000Z","outcome":"pass","readingId":"01890a5d-ac96-774b-bcce-000000000060","receivedAt":"2026-02-28T08:01:01.000000Z","runId":"01890a5d-ac96-774b-bcce-000000000050","verdictId":"01890a5d-ac96-774b-bcce-000000000070","worst":null}
+        ],"serial":"SN-1","unitId":"01890a5d-ac96-774b-bcce-000000000041"},{"disposition":{"disposition":"concession","reason":"0.1 dB is harmless here."},"otherRuns":[],"outcome":"fail","runs":[
+        {"conditionId":"01890a5d-ac96-774b-bcce-000000000011","files":["4444444444444444444444444444444444444444444444444444444444444444"],"measuredAt":"2026-02-28T08:02:00.000000Z","outcome":"fail","readingId":"01890a5d-ac96-774b-bcce-000000000062","receivedAt":"2026-02-28T08:02:01.000000Z","runId":"01890a5d-ac96-774b-bcce-000000000054","verdictId":"01890a5d-ac96-774b-bcce-000000000072","worst":{"criterion":"top","frequencyHz":null,"margin":-0.1,"unit":"dB"}}
+        ],"serial":"SN-2","unitId":"01890a5d-ac96-774b-bcce-000000000040"}]}
+        """.ReplaceLineEndings(string.Empty);
+}
