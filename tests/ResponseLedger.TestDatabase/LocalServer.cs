@@ -6,6 +6,7 @@ namespace ResponseLedger.TestDatabase;
 internal sealed class LocalServer : TestServer
 {
     private const string Prefix = "responseledger-test-";
+    private const long BytesWanted = 4L << 30;
 
     private readonly string folder;
     private readonly EmbeddedPostgres postgres;
@@ -22,9 +23,9 @@ internal sealed class LocalServer : TestServer
     {
         // What a killed test process left. A young folder may be another's that has not taken hold of it yet.
         var old = TimeProvider.System.GetUtcNow().UtcDateTime.AddMinutes(-5);
-        foreach (var abandoned in Directory.GetDirectories(Path.GetTempPath(), Prefix + "*").Where(f => Directory.GetCreationTimeUtc(f) < old))
+        foreach (var abandoned in Directory.GetDirectories(Place(), Prefix + "*").Where(f => Directory.GetCreationTimeUtc(f) < old))
             await EmbeddedPostgres.TryRemoveAsync(abandoned, CancellationToken.None);
-        var folder = Path.Combine(Path.GetTempPath(), Prefix + Guid.CreateVersion7(TimeProvider.System.GetUtcNow()).ToString("N"));
+        var folder = Path.Combine(Place(), Prefix + Guid.CreateVersion7(TimeProvider.System.GetUtcNow()).ToString("N"));
         var options = new EmbeddedPostgresOptions { DataFolder = folder, Databases = [], MaxConnections = 400, FlushNewCluster = false };
         return new LocalServer(folder, await EmbeddedPostgres.StartAsync(options, CancellationToken.None));
     }
@@ -37,5 +38,14 @@ internal sealed class LocalServer : TestServer
     {
         await postgres.DisposeAsync();
         Directory.Delete(folder, recursive: true);
+    }
+
+    // A file system in memory where there is a roomy one: the cluster lives for minutes, and every new database is a few hundred files.
+    private static string Place()
+    {
+        const string inMemory = "/dev/shm";
+        return OperatingSystem.IsLinux() && Directory.Exists(inMemory) && new DriveInfo(inMemory).AvailableFreeSpace > BytesWanted
+            ? inMemory
+            : Path.GetTempPath();
     }
 }

@@ -21,7 +21,7 @@ internal abstract class TestServer : IAsyncDisposable
 
     protected async Task RunAsync(string sql)
     {
-        await using var connection = new NpgsqlConnection(Unpooled(OwnerConnectionString("postgres")));
+        await using var connection = new NpgsqlConnection(OwnerConnectionString("postgres"));
         await connection.OpenAsync();
 
         // CREATE and DROP DATABASE take no parameters; the names are made here.
@@ -30,6 +30,4 @@ internal abstract class TestServer : IAsyncDisposable
 #pragma warning restore CA2100
         await command.ExecuteNonQueryAsync();
     }
-
-    private static string Unpooled(string connectionString) => new NpgsqlConnectionStringBuilder(connectionString) { Pooling = false }.ConnectionString;
 }
