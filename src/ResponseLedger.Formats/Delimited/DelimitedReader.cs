@@ -20,7 +20,8 @@ internal sealed class DelimitedReader
         if (decoded.Note is { } encoding)
             notes.Add(encoding);
         ReadOnlySpan<char> text = decoded.Characters;
-        if (!Dialect.TryFind(text, ct, out Dialect dialect, out int firstRowLine, out int columnCount))
+        if (!Dialect.TryFind(text, ct, out Dialect dialect, out int firstRowLine, out int columnCount)
+            && !Layout.TryFindHeads(text, out dialect, out firstRowLine, out columnCount))
         {
             issues.Add(null, null, ReadCodes.NoData,
                 "No line holds two numbers or more; export the sweep as text with one row a frequency.");

@@ -66,6 +66,44 @@ internal sealed class Layout
         return layout;
     }
 
+    /// <summary>Finds plain heads in a file without one good row, so that the faults of its rows can still be named by line.</summary>
+    public static bool TryFindHeads(ReadOnlySpan<char> text, out Dialect dialect, out int firstRowLine, out int columnCount)
+    {
+        dialect = default;
+        firstRowLine = columnCount = 0;
+        var lines = new LineWalk(text);
+        while (lines.MoveNext() && lines.Number <= MostTitleLines)
+        {
+            if (lines.Line.IsWhiteSpace() || Fields.IsComment(lines.Line))
+                continue;
+            if (columnCount > 0)
+            {
+                firstRowLine = lines.Number;
+                return true;
+            }
+
+            foreach (char delimiter in "\t;,")
+            {
+                var fields = new Fields(lines.Line, delimiter);
+                int known = 0;
+                bool frequency = false;
+                while (fields.MoveNext() && fields.Count <= 256)
+                {
+                    ColumnMeaning meaning = HeadWords.Read(fields.Current.ToString(), "");
+                    known += meaning.Alternatives.Count > 0 ? 1 : 0;
+                    frequency |= meaning.Alternatives.Any(a => a.Quantity == ColumnQuantity.Frequency);
+                }
+
+                if (!frequency || known < 2 || columnCount > 0)
+                    continue;
+                dialect = new Dialect(delimiter, DecimalComma: false);
+                columnCount = fields.CountWithoutTrailing;
+            }
+        }
+
+        return false;
+    }
+
     /// <summary>SHA-256 of the heads and units in lower case with single blanks; null without heads.</summary>
     public string? HeadsDigest()
     {
