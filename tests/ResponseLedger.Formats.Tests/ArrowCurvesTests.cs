@@ -19,10 +19,14 @@ public sealed class ArrowCurvesTests
         Assert.Equal(["frequencyHz", "r1", "r2"], batch.Schema.FieldsList.Select(f => f.Name));
         Assert.Equal("S-1", batch.Schema.FieldsList[1].Metadata["serial"]);
         Assert.Equal("pass", batch.Schema.FieldsList[1].Metadata["outcome"]);
-        Assert.Equal([10.0, 20, 30], ((DoubleArray)batch.Column(0)).ToList().Select(v => v!.Value));
-        Assert.Equal([-1.5, null, 0.1], ((DoubleArray)batch.Column(1)).ToList());
+        Assert.Equal([10.0, 20, 30], Values(batch, 0));
+        Assert.Equal([-1.5, null, 0.1], Values(batch, 1));
+        Assert.Equal([1.0, 2, 3], Values(batch, 2));
         Assert.Null(reader.ReadNextRecordBatch());
     }
+
+    private static IEnumerable<double?> Values(RecordBatch batch, int column)
+        => Enumerable.Range(0, batch.Length).Select(i => ((DoubleArray)batch.Column(column)).GetValue(i));
 
     [Fact]
     public void An_overlay_without_runs_is_its_frequencies()

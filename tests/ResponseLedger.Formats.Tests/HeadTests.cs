@@ -148,6 +148,15 @@ public sealed class HeadTests
     }
 
     [Fact]
+    public void A_unit_that_the_house_settles_is_noted()
+    {
+        FileReading reading = Reading.Of("Frequency;Vin;Vout (V)\n10;2;1\n20;2;1\n");
+        reading.Taken();
+        Assert.Equal(["The head of column 1 names no unit; it was taken in Hz.", "The head of column 2 names no unit; it was taken in V."],
+            reading.Notes.Where(n => n.Code == "unitSettled").Select(n => n.Message));
+    }
+
+    [Fact]
     public void An_exact_zero_is_carried_as_a_magnitude_of_zero()
         => Reading.Same(Reading.Of("f;|H|\n1;1\n2;0\n3;1\n").Taken().FirstPlane, 1, 0, 1);
 }

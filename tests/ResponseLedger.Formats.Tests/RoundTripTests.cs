@@ -80,6 +80,20 @@ public sealed class RoundTripTests
     }, seed: "0000KOIPe833", iter: 300);
 
     [Fact]
+    public void Every_spelling_of_a_number_is_rounded_correctly()
+    {
+        Gen<string> digits = Gen.Char['0', '9'].Array[1, 24].Select(c => new string(c));
+        Gen<string> spelling = Gen.Select(Gen.OneOfConst("", "-", "+"), digits, Gen.OneOf(Gen.Const(""), digits.Select(d => "." + d)), Gen.OneOf(Gen.Const(""), Gen.Int[-330, 280].Select(e => FormattableString.Invariant($"e{e}"))),
+            (sign, whole, fraction, power) => sign + whole + fraction + power);
+        Gen.Select(spelling, spelling).Sample((a, b) =>
+        {
+            FileReading reading = Reading.Of($"f,Gain (dB)\n1,{a}\n2,{b}\n");
+            double[] expected = [double.Parse(a, CultureInfo.InvariantCulture), double.Parse(b, CultureInfo.InvariantCulture)];
+            return reading.Sweep is { } sweep ? sweep.FirstPlane.SequenceEqual(expected) : expected.Any(e => !double.IsFinite(e));
+        }, seed: "0000KOIPe833", iter: 5_000);
+    }
+
+    [Fact]
     public void An_exact_zero_survives_both_writers_as_a_magnitude()
     {
         Sweep sweep = Sweep.Create(SweepForm.LevelPhase, [10, 20, 30], [-3.25, double.NegativeInfinity, 6.5], [10, 20, 30]);

@@ -141,9 +141,20 @@ internal sealed class DelimitedReader
         if (plan is null)
             return;
         notes.Add(new ReadNote("columns", "Read: " + string.Join("; ", plan.Select(c => $"column {c.Column} as {Words(c.Quantity)} in {c.Unit}")) + "."));
+        foreach (ColumnChoice use in plan)
+            NoteBareUnit(layout, use);
         int[] aside = [.. columns.Where(c => c.Quantity == ColumnQuantity.Ignore).Select(c => c.Column)];
         if (aside.Length > 0)
             notes.Add(new ReadNote("columnsLeftAside", $"Left aside: column{(aside.Length == 1 ? "" : "s")} {string.Join(", ", aside.Take(20))}{(aside.Length > 20 ? ", ..." : "")}."));
+    }
+
+    // What the house settles for heads that name no unit is said, so that nobody has to know the rule.
+    private void NoteBareUnit(Layout layout, ColumnChoice use)
+    {
+        int i = use.Column - 1;
+        bool bare = layout.Meanings[i].IsSettled && HeadUnit.Part(layout.Heads[i]).Unit is null && (i >= layout.Units.Length || layout.Units[i].Length == 0);
+        if (bare && layout.Meanings[i].Alternatives[0] == (use.Quantity, use.Unit))
+            notes.Add(new ReadNote("unitSettled", $"The head of column {use.Column} names no unit; it was taken in {use.Unit}."));
     }
 
     private void AskAttenuation(Layout layout, IReadOnlyList<ColumnChoice> plan, out IReadOnlyList<ColumnChoices> candidates)

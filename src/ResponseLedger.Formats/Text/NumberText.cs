@@ -30,29 +30,26 @@ internal static class NumberText
             return NumberKind.Empty;
         if (field.Length > LongestNumber)
             return NumberKind.Text;
-        if (!HasShape(field, decimalComma ? ',' : '.'))
+        var scan = new Scan(field, decimalComma ? ',' : '.');
+        if (!scan.IsNumber)
             return KindOfOther(field, decimalComma);
-
-        bool parsed;
-        if (decimalComma || field[0] == '\u2212')
-        {
-            Span<char> plain = stackalloc char[LongestNumber];
-            field.CopyTo(plain);
-            plain = plain[..field.Length];
-            plain.Replace(',', '.');
-            plain.Replace('\u2212', '-');
-            parsed = double.TryParse(plain, NumberStyles.Float, CultureInfo.InvariantCulture, out value);
-        }
-        else
-        {
-            parsed = double.TryParse(field, NumberStyles.Float, CultureInfo.InvariantCulture, out value);
-        }
-
-        if (!parsed)
+        if (!scan.TryExact(out value) && !TryParse(field, decimalComma, out value))
             return NumberKind.Text;
         if (!double.IsFinite(value))
             return NumberKind.Infinite;
         return IsSentinel(value) ? NumberKind.Overload : NumberKind.Number;
+    }
+
+    private static bool TryParse(ReadOnlySpan<char> field, bool decimalComma, out double value)
+    {
+        if (!decimalComma && field[0] != '\u2212')
+            return double.TryParse(field, NumberStyles.Float, NumberFormatInfo.InvariantInfo, out value);
+        Span<char> plain = stackalloc char[LongestNumber];
+        field.CopyTo(plain);
+        plain = plain[..field.Length];
+        plain.Replace(',', '.');
+        plain.Replace('\u2212', '-');
+        return double.TryParse(plain, NumberStyles.Float, NumberFormatInfo.InvariantInfo, out value);
     }
 
     /// <summary>Whether the field is a number, or would be one but for a fault that has its own code.</summary>
@@ -62,39 +59,7 @@ internal static class NumberText
             return NumberKind.Empty;
         if (field.Length > LongestNumber)
             return NumberKind.Text;
-        return HasShape(field, decimalComma ? ',' : '.') ? NumberKind.Number : KindOfOther(field, decimalComma);
-    }
-
-    // [sign] digits [mark digits] [e [sign] digits], with a digit before or after the mark.
-    private static bool HasShape(ReadOnlySpan<char> field, char mark)
-    {
-        int i = IsSign(field[0]) ? 1 : 0;
-        int digits = 0;
-        while (i < field.Length && char.IsAsciiDigit(field[i]))
-        {
-            i++;
-            digits++;
-        }
-
-        if (i < field.Length && field[i] == mark)
-        {
-            i++;
-            while (i < field.Length && char.IsAsciiDigit(field[i]))
-            {
-                i++;
-                digits++;
-            }
-        }
-
-        if (digits == 0)
-            return false;
-        if (i == field.Length)
-            return true;
-        if (field[i] is not ('e' or 'E') || ++i == field.Length)
-            return false;
-        if (field[i] is '+' or '-' && ++i == field.Length)
-            return false;
-        return field[i..].IndexOfAnyExceptInRange('0', '9') < 0;
+        return new Scan(field, decimalComma ? ',' : '.').IsNumber ? NumberKind.Number : KindOfOther(field, decimalComma);
     }
 
     private static NumberKind KindOfOther(ReadOnlySpan<char> field, bool decimalComma)
@@ -134,4 +99,81 @@ internal static class NumberText
     private static bool IsSign(char c) => c is '-' or '+' or '\u2212';
 
     private static bool Is(ReadOnlySpan<char> word, string known) => word.Equals(known, StringComparison.OrdinalIgnoreCase);
+
+    /// <summary>One pass over [sign] digits [mark digits] [e [sign] digits], with a digit before or after the mark.</summary>
+    private readonly ref struct Scan
+    {
+        private readonly ulong mantissa;
+        private readonly int power;
+        private readonly bool exact;
+        private readonly bool negative;
+
+        public Scan(ReadOnlySpan<char> field, char mark)
+        {
+            negative = field[0] is '-' or '\u2212';
+            int i = IsSign(field[0]) ? 1 : 0;
+            int digits = 0;
+            int fraction = 0;
+            for (bool marked = false; i < field.Length; i++)
+            {
+                uint digit = (uint)(field[i] - '0');
+                if (digit <= 9)
+                {
+                    // Nineteen digits cannot overflow; more are left to the general parser.
+                    if (++digits <= 19)
+                        mantissa = 10 * mantissa + digit;
+                    fraction += marked ? 1 : 0;
+                }
+                else if (field[i] == mark && !marked)
+                    marked = true;
+                else
+                    break;
+            }
+
+            if (digits == 0)
+                return;
+            int exponent = 0;
+            if (i < field.Length)
+            {
+                if (field[i] is not ('e' or 'E') || ++i == field.Length)
+                    return;
+                bool down = field[i] == '-';
+                if (field[i] is '+' or '-' && ++i == field.Length)
+                    return;
+                for (; i < field.Length; i++)
+                {
+                    uint digit = (uint)(field[i] - '0');
+                    if (digit > 9)
+                        return;
+                    exponent = Math.Min(10 * exponent + (int)digit, 100_000);
+                }
+
+                exponent = down ? -exponent : exponent;
+            }
+
+            IsNumber = true;
+            power = exponent - fraction;
+            exact = digits <= 19 && mantissa <= 1UL << 53 && Math.Abs(power) < PowersOfTen.Length;
+        }
+
+        public bool IsNumber { get; }
+
+        /// <summary>
+        /// A mantissa and a power of ten that are both exact doubles make a correctly rounded number in one operation
+        /// (W. D. Clinger, How to read floating point numbers accurately, 1990); all others need the general parser.
+        /// </summary>
+        public bool TryExact(out double value)
+        {
+            value = 0;
+            if (!exact)
+                return false;
+            value = power < 0 ? mantissa / PowersOfTen[-power] : mantissa * PowersOfTen[power];
+            if (negative)
+                value = -value;
+            return true;
+        }
+
+        private static ReadOnlySpan<double> PowersOfTen =>
+            [1e0, 1e1, 1e2, 1e3, 1e4, 1e5, 1e6, 1e7, 1e8, 1e9, 1e10, 1e11, 1e12, 1e13, 1e14, 1e15, 1e16, 1e17, 1e18, 1e19, 1e20, 1e21, 1e22];
+    }
 }

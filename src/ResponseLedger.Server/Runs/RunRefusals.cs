@@ -23,5 +23,5 @@ internal sealed record NothingChanges()
 internal sealed record SameFilesThere(Guid RunId)
     : Refusal(StatusCodes.Status409Conflict, "sameFilesThere", $"The same files stand there already as run {RunId}. Invalidate this run instead, with its cause.");
 
-internal sealed record NotWritable(string Why)
-    : Refusal(StatusCodes.Status409Conflict, "notWritable", Why);
+internal sealed record NotWritable(string Word, string Why)
+    : Refusal(StatusCodes.Status409Conflict, Word, Why);

@@ -27,7 +27,11 @@ public static class CurveCodec
 
     /// <summary>Makes the sweep again that was packed.</summary>
     /// <exception cref="InvalidDataException">The lengths do not fit the form: the store was changed behind the server's back.</exception>
-    public static Sweep Unpack(SweepForm form, ReadOnlySpan<byte> grid, ReadOnlySpan<byte> planes)
+    /// <param name="form">What the planes hold.</param>
+    /// <param name="grid">The bytes of the frequencies.</param>
+    /// <param name="planes">The bytes of the planes.</param>
+    /// <param name="noiseFloorDb">The noise floor in dB that the reading went by, or null.</param>
+    public static Sweep Unpack(SweepForm form, ReadOnlySpan<byte> grid, ReadOnlySpan<byte> planes, double? noiseFloorDb = null)
     {
         var planeCount = form is SweepForm.Level or SweepForm.Ratio ? 1 : 2;
         if (grid.Length % sizeof(double) != 0 || planes.Length != planeCount * grid.Length)
@@ -35,7 +39,7 @@ public static class CurveCodec
 
         var frequencyHz = Doubles(grid);
         var values = Doubles(planes);
-        return Sweep.Create(form, frequencyHz, values[..frequencyHz.Length], values[frequencyHz.Length..]);
+        return Sweep.Create(form, frequencyHz, values[..frequencyHz.Length], values[frequencyHz.Length..], phaseFloorDb: noiseFloorDb);
     }
 
     private static byte[] Pack(ReadOnlySpan<double> first, ReadOnlySpan<double> second)

@@ -15,7 +15,7 @@ public static class CurveQueries
             join curve in db.Curves on reading.Id equals curve.ReadingId
             join grid in db.Grids on reading.GridSha256 equals grid.Sha256
             where reading.Id == readingId
-            select new { reading.Form, Grid = grid.Planes, curve.Planes }).AsNoTracking().SingleOrDefaultAsync(cancellationToken);
-        return row is null ? null : CurveCodec.Unpack((SweepForm)row.Form, row.Grid, row.Planes);
+            select new { reading.Form, reading.NoiseFloorDb, Grid = grid.Planes, curve.Planes }).AsNoTracking().SingleOrDefaultAsync(cancellationToken);
+        return row is null ? null : CurveCodec.Unpack((SweepForm)row.Form, row.Grid, row.Planes, row.NoiseFloorDb);
     }
 }

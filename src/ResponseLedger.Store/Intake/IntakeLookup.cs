@@ -25,9 +25,10 @@ public sealed record FoundCondition(Guid Id, Guid DeviceId, string Name);
 /// <param name="Id">The bench.</param>
 /// <param name="Name">Its name.</param>
 /// <param name="SerialPattern">The pattern in force, or null.</param>
+/// <param name="NoiseFloorDb">The noise floor in force in dB, or null.</param>
 /// <param name="IsBound">Whether the sender's token is bound to this one.</param>
 /// <param name="IsNamed">Whether the sender named this one.</param>
-public sealed record FoundBench(Guid Id, string Name, string? SerialPattern, bool IsBound, bool IsNamed);
+public sealed record FoundBench(Guid Id, string Name, string? SerialPattern, double? NoiseFloorDb, bool IsBound, bool IsNamed);
 
 /// <summary>Everything that fits the names; it is for the caller to refuse none or several.</summary>
 public sealed record FoundPlaces(
@@ -59,11 +60,11 @@ public static class IntakeLookup
 
     private const string BenchesSql =
         """
-        select b.id, b.name,
-               (select serial_pattern from bench_setting s where s.bench_id = b.id order by number desc limit 1),
+        select b.id, b.name, s.serial_pattern, s.noise_floor_db,
                b.id = $3 or exists (select 1 from token_binding t where t.token_id = $4 and t.bench_id = b.id),
                b.id = $1 or b.name = $2
         from bench b
+        left join lateral (select serial_pattern, noise_floor_db from bench_setting where bench_id = b.id order by number desc limit 1) s on true
         where b.id = $1 or b.name = $2 or b.id = $3 or b.id in (select bench_id from token_binding where token_id = $4)
         """;
 
@@ -95,7 +96,7 @@ public static class IntakeLookup
     }
 
     private static FoundBench ReadBench(NpgsqlDataReader row)
-        => new(row.GetGuid(0), row.GetString(1), row.IsDBNull(2) ? null : row.GetString(2), IsTrue(row, 3), IsTrue(row, 4));
+        => new(row.GetGuid(0), row.GetString(1), row.IsDBNull(2) ? null : row.GetString(2), row.IsDBNull(3) ? null : row.GetDouble(3), IsTrue(row, 4), IsTrue(row, 5));
 
     // A comparison with a name that was left out is null, which means no.
     private static bool IsTrue(NpgsqlDataReader row, int column) => !row.IsDBNull(column) && row.GetBoolean(column);

@@ -15,6 +15,7 @@ namespace ResponseLedger.Store.Intake;
 /// <param name="MeasuredAt">When it was measured; null for the time of receipt.</param>
 /// <param name="Circumstances">JSON text, or null.</param>
 /// <param name="Columns">The columns chosen, or null where the file or the bench's memory settles them.</param>
+/// <param name="NoiseFloorDb">The bench's noise floor in dB, under which phase is absent; null for none.</param>
 /// <param name="OtherUnitAcknowledged">Whether the same bytes for another unit of the lot are meant.</param>
 public sealed record IntakeOrder(
     Guid DeviceId,
@@ -28,6 +29,7 @@ public sealed record IntakeOrder(
     DateTimeOffset? MeasuredAt = null,
     string? Circumstances = null,
     ColumnChoices? Columns = null,
+    double? NoiseFloorDb = null,
     bool OtherUnitAcknowledged = false);
 
 /// <summary>One file of an upload.</summary>

@@ -37,8 +37,8 @@ internal static class IntakeRows
 
     private const string ReadingSql =
         """
-        insert into reading (id, run_id, number, reader, reader_version, columns, grid_sha256, form, points, notes, at, by_id)
-        values ($1, $2, 1, $3, $4, $5, $6, $7, $8, $9, $10, $11)
+        insert into reading (id, run_id, number, reader, reader_version, columns, grid_sha256, form, points, notes, at, by_id, noise_floor_db)
+        values ($1, $2, 1, $3, $4, $5, $6, $7, $8, $9, $10, $11, $12)
         """;
 
     private const string CurveSql = "insert into curve (reading_id, planes) values ($1, $2)";
@@ -73,7 +73,8 @@ internal static class IntakeRows
         => batch.Add(
             ReadingSql,
             Of(readingId), Of(runId), Of(reading.Reader), Of(reading.ReaderVersion), OfText(reading.Choices?.ToJson()), Of(gridKey),
-            Of((short)sweep.Form), Of(sweep.Count), Of(JsonSerializer.Serialize(reading.Notes, JsonSerializerOptions.Web)), Of(act.At), Of(act.PersonId));
+            Of((short)sweep.Form), Of(sweep.Count), Of(JsonSerializer.Serialize(reading.Notes, JsonSerializerOptions.Web)), Of(act.At), Of(act.PersonId),
+            new NpgsqlParameter { Value = (object?)sweep.PhaseFloorDb ?? DBNull.Value, NpgsqlDbType = NpgsqlDbType.Double });
 }
 
 /// <summary>A verdict as its row takes it.</summary>

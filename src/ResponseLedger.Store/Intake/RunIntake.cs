@@ -1,6 +1,7 @@
 using System.Text.Json.Nodes;
 using Microsoft.EntityFrameworkCore;
 using Npgsql;
+using ResponseLedger.Engine.Sweeps;
 using ResponseLedger.Formats;
 using ResponseLedger.Ledger;
 using ResponseLedger.Records.Decisions;
@@ -50,7 +51,14 @@ public sealed class RunIntake(
         if (read.Reading.Sweep is null)
             return await WithoutSweepAsync(order, file, filesDigest, read.Reading, cancellationToken);
 
-        var judged = basis is null ? null : new IntakeVerdict(Judge.Evaluate(read.Reading.Sweep, basis), basis);
+        var sweep = read.Reading.Sweep;
+        if (order.NoiseFloorDb is { } noiseFloorDb)
+        {
+            sweep = Sweep.Create(sweep.Form, sweep.FrequencyHz, sweep.FirstPlane, sweep.SecondPlane, phaseFloorDb: noiseFloorDb);
+            read = read with { Reading = read.Reading with { Sweep = sweep } };
+        }
+
+        var judged = basis is null ? null : new IntakeVerdict(Judge.Evaluate(sweep, basis), basis);
         var verdict = judged is null ? null : new StoredVerdictRow(current!.BasisId, judged.Judgement);
         try
         {

@@ -50,7 +50,7 @@ public sealed class LoopReferenceTests
         var found = Margins(id, out var run);
         double critical = Loops[id].GetProperty("criticalPhaseDeg").GetDouble();
         double scanned = double.PositiveInfinity;
-        foreach (double frequencyHz in Measuring.LogGrid(run.FrequencyHz[0], run.FrequencyHz[^1], 200_001))
+        foreach (double frequencyHz in Measuring.LogGrid(run.FrequencyHz[0], run.FrequencyHz[^1], 60_001))
         {
             double gain = Math.Pow(10, run.GainDbAt(frequencyHz)!.Value / 20);
             double psi = (run.PhaseDegAt(frequencyHz)!.Value - critical) * Math.PI / 180;

@@ -16,8 +16,9 @@ namespace ResponseLedger.Server.Runs.Upload;
 /// <param name="Id">The bench.</param>
 /// <param name="Name">Its name.</param>
 /// <param name="SerialPattern">Its pattern for serial numbers, or null.</param>
+/// <param name="NoiseFloorDb">Its noise floor in dB, or null.</param>
 /// <param name="IsNew">Whether this upload made it.</param>
-internal sealed record UploadBench(Guid Id, string Name, string? SerialPattern, bool IsNew);
+internal sealed record UploadBench(Guid Id, string Name, string? SerialPattern, double? NoiseFloorDb, bool IsNew);
 
 /// <summary>Settles the bench: a person's first use of a name makes it; a token has its own, and its first upload says which.</summary>
 internal sealed class UploadBenches(ResponseLedgerContext db, ActRunner acts)
@@ -65,14 +66,14 @@ internal sealed class UploadBenches(ResponseLedgerContext db, ActRunner acts)
                         "bench.created",
                         new JsonObject { ["benchId"] = bench.Id.ToString(), ["bench"] = name },
                         new JsonObject { ["by"] = "upload" });
-                    return Task.FromResult(new UploadBench(bench.Id, name, null, IsNew: true));
+                    return Task.FromResult(new UploadBench(bench.Id, name, null, null, IsNew: true));
                 },
                 cancellationToken);
         }
         catch (DbUpdateException exception) when (IsTaken(exception))
         {
             var id = await db.Benches.Where(b => b.Name == name).Select(b => b.Id).SingleAsync(cancellationToken);
-            return new UploadBench(id, name, null, IsNew: false);
+            return new UploadBench(id, name, null, null, IsNew: false);
         }
     }
 
@@ -105,7 +106,7 @@ internal sealed class UploadBenches(ResponseLedgerContext db, ActRunner acts)
         }
     }
 
-    private static UploadBench Known(FoundBench bench) => new(bench.Id, bench.Name, bench.SerialPattern, IsNew: false);
+    private static UploadBench Known(FoundBench bench) => new(bench.Id, bench.Name, bench.SerialPattern, bench.NoiseFloorDb, IsNew: false);
 
     private static bool IsTaken(DbUpdateException exception)
         => exception.InnerException is PostgresException { SqlState: PostgresErrorCodes.UniqueViolation };

@@ -2,6 +2,7 @@ using System.Globalization;
 using FluentValidation;
 using ResponseLedger.Formats;
 using ResponseLedger.Ledger;
+using ResponseLedger.Server.Devices;
 using ResponseLedger.Store.Intake;
 
 namespace ResponseLedger.Server.Runs.Upload;
@@ -46,14 +47,15 @@ internal sealed record UploadFields(
 /// <summary>Judges the fields before anything is looked up.</summary>
 internal sealed class UploadFieldsValidator : AbstractValidator<UploadFields>
 {
-    private const int LongestName = 200;
+    // Part number and revision with a stroke between.
+    private const int LongestName = 2 * TypedText.LongestName + 1;
 
     public UploadFieldsValidator()
     {
-        RuleFor(f => f.Device).MaximumLength(LongestName);
-        RuleFor(f => f.Lot).MaximumLength(LongestName);
-        RuleFor(f => f.Bench).MaximumLength(LongestName).Must(b => b is null || !b.Any(char.IsControl)).WithMessage("A bench's name holds no control characters.");
-        RuleFor(f => f.Condition).MaximumLength(LongestName);
+        RuleFor(f => f.Device).IsName(LongestName).When(f => f.Device is not null);
+        RuleFor(f => f.Lot).IsName().When(f => f.Lot is not null);
+        RuleFor(f => f.Bench).IsName().When(f => f.Bench is not null);
+        RuleFor(f => f.Condition).IsName().When(f => f.Condition is not null);
         RuleFor(f => f.Purpose)
             .Must(p => p is null || RunPurposes.All.Contains(p))
             .WithMessage($"The purpose is one of {string.Join(", ", RunPurposes.All)}.");
