@@ -65,7 +65,7 @@ public sealed class FuzzTests
             }
         }
 
-        TestContext.Current.SendDiagnosticMessage($"{Mutants} mutants: {taken} taken, {refused} refused, {asked} candidates tried; slowest {slowest.TotalMilliseconds:F1} ms");
+        TestContext.Current.TestOutputHelper?.WriteLine($"{Mutants} mutants: {taken} taken, {refused} refused, {asked} candidates tried; slowest {slowest.TotalMilliseconds:F1} ms");
         Assert.True(taken > Mutants / 50 && refused > Mutants / 4, $"The mutants are lopsided: {taken} taken, {refused} refused.");
         Assert.True(slowest < TimeSpan.FromSeconds(5), $"The slowest mutant took {slowest}.");
     }
