@@ -121,6 +121,15 @@ public sealed class MerkleTreeTests
     }
 
     [Fact]
+    public void A_proof_does_not_hold_for_a_tree_said_to_be_larger()
+    {
+        var leaves = Leaves(4);
+        var path = MerkleTree.InclusionProof(0, leaves);
+        Assert.True(MerkleProof.VerifyInclusion(0, 4, leaves[0], path, MerkleTree.Root(leaves)));
+        Assert.False(MerkleProof.VerifyInclusion(0, 8, leaves[0], path, MerkleTree.Root(leaves)));
+    }
+
+    [Fact]
     public void A_rewritten_history_is_not_consistent()
     {
         var leaves = Leaves(8);

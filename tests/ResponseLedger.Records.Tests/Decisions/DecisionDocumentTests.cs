@@ -193,6 +193,24 @@ public sealed class DecisionDocumentTests
             () => DecisionDocument.Create(WithUnit(0x41, u => u with { Runs = [u.Runs[0], u.Runs[1] with { FilesSha256 = [new byte[31]] }] })));
     }
 
+    /// <summary>Each contradiction by itself, in a rejection, where nothing else stands against it.</summary>
+    [Fact]
+    public void Each_contradiction_is_told_at_its_own_place()
+    {
+        var rejected = Record with { Decision = DecisionWord.Reject };
+        Assert.Equal(DecisionWord.Reject, DecisionDocument.Create(rejected).Record.Decision);
+        Refused(rejected with { Units = [Sn1(u => u with { Runs = [u.Runs[0], u.Runs[1] with { Outcome = Outcome.Fail }] })] }, "units[0].outcome: A unit is not better");
+        Refused(rejected with { Units = [Sn1(u => u with { Runs = [u.Runs[0]] })] }, "units[0].outcome: A unit passes only");
+        Refused(rejected with { Units = [Sn1(u => u with { Outcome = null, Runs = [u.Runs[1] with { VerdictId = null, Outcome = null }] })] }, "units[0].runs[0].worst");
+        Refused(rejected with { Conditions = [.. Record.Conditions.Select(c => c with { Mask = null })] }, "units[0].runs[0].outcome: There is no verdict");
+        Refused(rejected with { Units = [Sn1(u => u with { OtherRuns = [u.OtherRuns[0] with { ConditionId = SampleDecision.Id(9) }] })] }, "units[0].otherRuns[0].conditionId");
+
+        static DecidedUnit Sn1(Func<DecidedUnit, DecidedUnit> change) => change(Record.Units[1]);
+
+        static void Refused(DecisionRecord record, string place)
+            => Assert.Contains(place, Assert.Throws<ArgumentException>(() => DecisionDocument.Create(record)).Message, StringComparison.Ordinal);
+    }
+
     private static CountingRun WithoutVerdict(CountingRun run) => run with { VerdictId = null, Outcome = null, Worst = null };
 
     private static DecisionRecord WithUnit(int id, Func<DecidedUnit, DecidedUnit> change)

@@ -24,6 +24,17 @@ public sealed class VerdictDocumentTests
         Assert.Equal("""{"outcome":"pass","worst":null,"criteria":[],"measures":{},"maskRevision":1,"engine":1}""", json.ToJsonString());
     }
 
+    [Fact]
+    public void A_criterion_with_remarks_carries_them()
+    {
+        var top = Samples.Evaluation.Criteria[0] with { Notes = [new("suspectPhase", "The phase steps by 130 degrees at 50 Hz.")] };
+        var mask = Samples.Mask with { Mask = new([Samples.Mask.Mask.Limits[0]], []) };
+        var json = VerdictDocument.Write(new Evaluation(Outcome.Fail, 0, [top], []), mask, 1, 1);
+        Assert.Equal(
+            """[{"code":"suspectPhase","message":"The phase steps by 130 degrees at 50 Hz."}]""",
+            json["criteria"]![0]!["notes"]!.ToJsonString());
+    }
+
     [Theory]
     [InlineData(double.NaN)]
     [InlineData(double.PositiveInfinity)]
