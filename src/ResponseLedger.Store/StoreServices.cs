@@ -13,6 +13,10 @@ public static class StoreServices
     /// <summary>Connections the server may hold at once, well under PostgreSQL's default limit of 100.</summary>
     public const int MaxPoolSize = 40;
 
+    // Together some 20 s: longer than a restart of the embedded PostgreSQL, shorter than a sender's patience.
+    private const int Retries = 6;
+    private static readonly TimeSpan LongestRetryDelay = TimeSpan.FromSeconds(5);
+
     private const string MigrationsAssembly = "ResponseLedger.Migrations";
 
     /// <summary>Registers data source, contexts, the act runner and the ledger's sequencer. A TimeProvider must be registered beside it.</summary>
@@ -35,7 +39,7 @@ public static class StoreServices
     /// <summary>Sets a context up for a data source: provider, naming, migrations, retries.</summary>
     public static DbContextOptionsBuilder Configure(DbContextOptionsBuilder options, NpgsqlDataSource dataSource)
         => options
-            .UseNpgsql(dataSource, npgsql => npgsql.MigrationsAssembly(MigrationsAssembly).EnableRetryOnFailure().SetPostgresVersion(15, 0))
+            .UseNpgsql(dataSource, npgsql => npgsql.MigrationsAssembly(MigrationsAssembly).EnableRetryOnFailure(Retries, LongestRetryDelay, null).SetPostgresVersion(15, 0))
             .UseSnakeCaseNamingConvention();
 
     internal static string Capped(string connectionString)
