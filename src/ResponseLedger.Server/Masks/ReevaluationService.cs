@@ -1,3 +1,4 @@
+using ResponseLedger.Server.Start;
 using ResponseLedger.Store.Reevaluation;
 
 namespace ResponseLedger.Server.Masks;
@@ -25,10 +26,13 @@ internal sealed class ReevaluationAfterChange(Reevaluator reevaluator, Reevaluat
 /// Looks for stale verdicts at the start, when woken, and every few seconds: whatever interrupted a re-evaluation, and whatever
 /// made verdicts stale (a lot reopened, a run reassigned, an upload that met a release), it goes on by itself.
 /// </summary>
-internal sealed class ReevaluationService(Reevaluator reevaluator, TimeProvider time, ILogger<ReevaluationService> log) : BackgroundService
+internal sealed class ReevaluationService(Reevaluator reevaluator, Readiness readiness, TimeProvider time, ILogger<ReevaluationService> log) : BackgroundService
 {
     /// <summary>The longest time between two looks.</summary>
     public static readonly TimeSpan Interval = TimeSpan.FromSeconds(15);
+
+    // How long between two looks at a start that is not done yet; there may be no tables before.
+    private static readonly TimeSpan StartInterval = TimeSpan.FromMilliseconds(250);
 
     private readonly SemaphoreSlim wake = new(0, 1);
 
@@ -49,8 +53,9 @@ internal sealed class ReevaluationService(Reevaluator reevaluator, TimeProvider 
     {
         while (!stoppingToken.IsCancellationRequested)
         {
-            await LookAsync(stoppingToken);
-            await WaitAsync(stoppingToken);
+            if (readiness.IsReady)
+                await LookAsync(stoppingToken);
+            await WaitAsync(readiness.IsReady ? Interval : StartInterval, stoppingToken);
         }
     }
 
@@ -77,11 +82,11 @@ internal sealed class ReevaluationService(Reevaluator reevaluator, TimeProvider 
         }
     }
 
-    private async Task WaitAsync(CancellationToken stoppingToken)
+    private async Task WaitAsync(TimeSpan longest, CancellationToken stoppingToken)
     {
         using var either = CancellationTokenSource.CreateLinkedTokenSource(stoppingToken);
         var woken = wake.WaitAsync(either.Token);
-        var slept = Task.Delay(Interval, time, either.Token);
+        var slept = Task.Delay(longest, time, either.Token);
         await Task.WhenAny(woken, slept);
         await either.CancelAsync();
         await Task.WhenAll(woken, slept).ConfigureAwait(ConfigureAwaitOptions.SuppressThrowing);
