@@ -1,4 +1,3 @@
-using ResponseLedger.Engine.Masks;
 using ResponseLedger.Engine.Sweeps;
 using ResponseLedger.Records.Masks;
 using ResponseLedger.Store.Queries;

@@ -30,7 +30,8 @@ internal sealed class OverlayAxis
     /// <summary>Writes a curve's value at every frequency; NaN outside its span and where it has none.</summary>
     public void Fill(OverlayLine line, Span<double> values)
     {
-        var (own, kept) = (line.FrequencyHz, line.Values);
+        var own = line.FrequencyHz;
+        var kept = line.Values;
         if (kept.IsEmpty)
         {
             values.Fill(double.NaN);

@@ -1,3 +1,4 @@
+using System.Globalization;
 using ResponseLedger.Engine.Masks;
 using ResponseLedger.Engine.Measures;
 using ResponseLedger.Engine.Sweeps;
@@ -52,26 +53,29 @@ internal sealed class OverlayLimits
     private OverlayLimit? Place(CurveLimit limit, List<OverlayNote> notes)
     {
         var golden = curves.Golden?.Sweep;
-        switch (limit.Basis)
+        if (limit.Basis == LimitBasis.Golden)
         {
-            case LimitBasis.Golden when question.MinusGolden:
+            if (question.MinusGolden)
                 return AsItStands(limit, 0);
-            case LimitBasis.Golden when golden is null:
-                notes.Add(new OverlayNote("limitNeedsGolden", $"The limit \"{limit.Name}\" is relative to the golden run, and none is set."));
-                return null;
-            case LimitBasis.Golden:
+            if (golden is not null)
                 return Along(limit, golden, sign: 1, level: 0);
-            case LimitBasis.Reference when ReferenceDb(limit) is not { } level:
-                notes.Add(new OverlayNote("limitNeedsReference", $"The limit \"{limit.Name}\" is relative to a reference level that no run here has."));
-                return null;
-            case LimitBasis.Reference:
-                notes.Add(new OverlayNote(
-                    "limitDrawnByReference",
-                    $"The limit \"{limit.Name}\" is relative to each run's own reference level. It is drawn by {(golden is null ? "the median of the runs' levels" : "that of the golden run")}, {level:0.###} dB."));
-                return question.MinusGolden ? Along(limit, golden!, sign: -1, level) : AsItStands(limit, level);
-            default:
-                return question.MinusGolden ? Along(limit, golden!, sign: -1, level: 0) : AsItStands(limit, TurnsDeg(limit));
+            notes.Add(new OverlayNote("limitNeedsGolden", $"The limit \"{limit.Name}\" is relative to the golden run, and none is set."));
+            return null;
         }
+
+        if (limit.Basis == LimitBasis.Absolute)
+            return question.MinusGolden ? Along(limit, golden!, sign: -1, level: 0) : AsItStands(limit, TurnsDeg(limit));
+
+        if (ReferenceDb(limit) is not { } level)
+        {
+            notes.Add(new OverlayNote("limitNeedsReference", $"The limit \"{limit.Name}\" is relative to a reference level that no run here has."));
+            return null;
+        }
+
+        notes.Add(new OverlayNote(
+            "limitDrawnByReference",
+            string.Create(CultureInfo.InvariantCulture, $"The limit \"{limit.Name}\" is relative to each run's own reference level. It is drawn by {(golden is null ? "the median of the runs' levels" : "that of the golden run")}, {level:0.###} dB.")));
+        return question.MinusGolden ? Along(limit, golden!, sign: -1, level) : AsItStands(limit, level);
     }
 
     private static OverlayLimit AsItStands(CurveLimit limit, double offset) => new(

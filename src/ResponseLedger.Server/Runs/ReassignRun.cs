@@ -8,7 +8,6 @@ using ResponseLedger.Server.People;
 using ResponseLedger.Store;
 using ResponseLedger.Store.Acts;
 using ResponseLedger.Store.Curves;
-using ResponseLedger.Store.Intake;
 using ResponseLedger.Store.Judging;
 using ResponseLedger.Store.Model;
 
@@ -17,11 +16,14 @@ namespace ResponseLedger.Server.Runs;
 /// <summary>POST /api/runs/{id}/reassignment: a run that was sent for the wrong unit, lot or condition. Where it was is kept.</summary>
 internal sealed class ReassignRun(ActRunner acts, RunViews views, JudgingMaterial material)
 {
-    public static async Task<Created<RunView>> HandleAsync(
+    public static Task<Created<RunView>> HandleAsync(
         Guid id, ReassignmentAsked asked, ClaimsPrincipal user, ReassignRun reassign, CancellationToken cancellationToken)
+        => reassign.RunAsync(id, asked, user, cancellationToken);
+
+    private async Task<Created<RunView>> RunAsync(Guid id, ReassignmentAsked asked, ClaimsPrincipal user, CancellationToken cancellationToken)
     {
-        await reassign.acts.RunAsync(CurrentActor.Of(user), (act, token) => reassign.ReassignAsync(act, id, asked, token), cancellationToken);
-        return TypedResults.Created($"/api/runs/{id}", await reassign.views.OneAsync(id, cancellationToken));
+        await acts.RunAsync(CurrentActor.Of(user), (act, token) => ReassignAsync(act, id, asked, token), cancellationToken);
+        return TypedResults.Created($"/api/runs/{id}", await views.OneAsync(id, cancellationToken));
     }
 
     private async Task<bool> ReassignAsync(Act act, Guid id, ReassignmentAsked asked, CancellationToken cancellationToken)

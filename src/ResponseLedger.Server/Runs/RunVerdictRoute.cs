@@ -1,7 +1,6 @@
 using System.Text.Json.Nodes;
 using Microsoft.AspNetCore.Http.HttpResults;
 using ResponseLedger.Records.Verdicts;
-using ResponseLedger.Server.Http;
 using ResponseLedger.Server.Runs.Upload;
 using ResponseLedger.Store;
 using ResponseLedger.Store.Judging;

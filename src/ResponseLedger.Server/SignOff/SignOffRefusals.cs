@@ -1,0 +1,22 @@
+using ResponseLedger.Server.Http;
+using ResponseLedger.Server.Lots;
+
+namespace ResponseLedger.Server.SignOff;
+
+internal sealed record LotDecided(string Number)
+    : Refusal(StatusCodes.Status409Conflict, "lotDecided", $"Lot {Number} is decided already. It must be reopened before anything under it changes.");
+
+internal sealed record LotOpen(string Number)
+    : Refusal(StatusCodes.Status409Conflict, "lotOpen", $"Lot {Number} is open: there is no decision to undo.");
+
+internal sealed record UnitPasses(string Serial)
+    : Refusal(StatusCodes.Status409Conflict, "unitPasses", $"Unit {Serial} passes; a disposition is for one that does not.");
+
+internal sealed record OwnRuns(int Count)
+    : Refusal(StatusCodes.Status409Conflict, "ownRuns", $"{Count} of the lot's runs were sent by you, and the device lets nobody sign for runs of their own. Somebody else must sign.");
+
+internal sealed record StandsAgainst(Blocker Blocker)
+    : Refusal(StatusCodes.Status409Conflict, Blocker.Code, Blocker.Sentence);
+
+internal sealed record SignerGone()
+    : Refusal(StatusCodes.Status403Forbidden, "notAllowed", "Your account is no longer there.");
