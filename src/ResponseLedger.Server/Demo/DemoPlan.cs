@@ -43,7 +43,7 @@ internal static class DemoPlan
             (parts, fault) => [ServoLoop.Build(parts, fault)],
             [
                 new("0318", 24, 24, 22, Bay4, DemoEnding.Open),
-                new("0319", 36, 36, 6, Bay4, DemoEnding.Open) { DriftDbPerUnit = 0.035, Faults = { [30] = Fault.WrongCapacitor } },
+                new("0319", 36, 36, 6, Bay4, DemoEnding.Open) { DriftDbPerUnit = 0.026, Faults = { [30] = Fault.WrongCapacitor } },
             ]),
     ];
 }

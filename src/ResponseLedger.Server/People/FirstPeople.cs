@@ -27,7 +27,8 @@ internal sealed class FirstPeople(IDbContextFactory<ResponseLedgerContext> conte
                 cancellationToken);
         }
 
-        if (await db.Users.AnyAsync(cancellationToken))
+        // The demo lab brings a manager of its own; one set from outside comes first all the same.
+        if (await db.Users.AnyAsync(cancellationToken) || (settings.Demo && settings.AdminPassword is null))
             return;
 
         var oneTime = settings.AdminPassword is null ? Accounts.OneTimePassword() : null;

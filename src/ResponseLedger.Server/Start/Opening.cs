@@ -1,3 +1,5 @@
+using Microsoft.AspNetCore.Hosting.Server;
+using Microsoft.AspNetCore.Hosting.Server.Features;
 using Microsoft.EntityFrameworkCore;
 using ResponseLedger.Ledger;
 using ResponseLedger.Server.Demo;
@@ -29,6 +31,7 @@ internal sealed class Opening(
             await StoreMigrator.MigrateAsync(store.OwnerConnectionString, store.ServerRoleName, loggers.CreateLogger("ResponseLedger.Store"), stoppingToken);
             readiness.TablesStand = true;
 
+            IReadOnlyDictionary<string, string> demoPasswords = new Dictionary<string, string>();
             readiness.Await("people");
             await services.GetRequiredService<FirstPeople>().EnsureAsync(settings, stoppingToken);
 
@@ -38,11 +41,11 @@ internal sealed class Opening(
             if (settings.Demo)
             {
                 readiness.Await("the demo lab");
-                await DemoLab.RunAsync(services, stoppingToken);
+                demoPasswords = await DemoLab.RunAsync(services, stoppingToken);
             }
 
             readiness.Done();
-            logger.LogInformation("Ready.");
+            await TellAsync(demoPasswords);
         }
         catch (OperationCanceledException) when (stoppingToken.IsCancellationRequested)
         {
@@ -57,6 +60,19 @@ internal sealed class Opening(
             Environment.ExitCode = 1;
             lifetime.StopApplication();
         }
+    }
+
+    // To the console and not through the log: passwords stay out of logs, and people look here for where to go.
+    private async Task TellAsync(IReadOnlyDictionary<string, string> demoPasswords)
+    {
+        var addresses = services.GetRequiredService<IServer>().Features.Get<IServerAddressesFeature>()?.Addresses ?? [];
+        await Console.Out.WriteLineAsync($"ResponseLedger is ready: {string.Join(" ", addresses)}");
+        if (!settings.Demo)
+            return;
+
+        await Console.Out.WriteLineAsync("This is the invented demo lab, in a database of its own. Sign in as one of:");
+        foreach (var (email, password) in demoPasswords.OrderBy(pair => pair.Key, StringComparer.Ordinal))
+            await Console.Out.WriteLineAsync($"  {email,-24} {password}");
     }
 
     private async Task Listening(CancellationToken stoppingToken)

@@ -26,9 +26,12 @@ internal sealed class Parts(int seed)
 {
     private readonly Random random = new(seed);
 
+    /// <summary>How much of the spread is drawn: 1 for production, 0 for a unit with the nominal values.</summary>
+    public double Spread { get; init; } = 1;
+
     /// <summary>A component of a nominal value whose spread (one standard deviation) is a third of its tolerance.</summary>
     public double Draw(double nominal, double tolerance)
-        => nominal * (1 + (tolerance / 3 * Math.Clamp(Normal(), -3, 3)));
+        => nominal * (1 + (Spread * tolerance / 3 * Math.Clamp(Normal(), -3, 3)));
 
     /// <summary>A normal deviate by the method of Box and Muller (1958).</summary>
     public double Normal()
