@@ -28,7 +28,7 @@ public sealed class ActTests
                 return;
             }
 
-            Assert.IsType<InjectedFaultException>(failed);
+            Assert.IsType<InjectedFaultException>(failed?.GetBaseException());
             Assert.True(after == before || after == before.Whole(), $"fault {at}: {before} became {after}");
         }
     }

@@ -173,6 +173,7 @@ public sealed class EmbeddedPostgres : IAsyncDisposable
             if (!databases.Contains(database))
                 await RunAsync($"create database {quoted}");
             await RunAsync($"revoke connect, temporary on database {quoted} from public");
+            await RunAsync($"grant connect on database {quoted} to {ClusterFolder.ServerRole}");
         }
 
         async Task RunAsync(string sql)
