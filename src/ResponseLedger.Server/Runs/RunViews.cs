@@ -8,11 +8,10 @@ using ResponseLedger.Store.Queries;
 
 namespace ResponseLedger.Server.Runs;
 
-/// <summary>A run as the API shows it.</summary>
-/// <param name="Standing">counting, retest, invalidated or notProduction.</param>
-/// <param name="Outcome">Outcome of the verdict on the basis that holds; null while there is none.</param>
-/// <param name="OutcomeReason">Why there is no outcome: noReleasedMask, or pending while runs are evaluated again.</param>
-/// <param name="Worst">The criterion that decided it.</param>
+/// <summary>
+/// A run as the API shows it. Standing is counting, retest, invalidated or notProduction. Outcome and worst are those of the verdict on
+/// the basis that holds; while there is none, the reason is noReleasedMask, or pending while runs are evaluated again.
+/// </summary>
 internal sealed record RunView(
     Guid Id, long ReceivedNo, Guid DeviceId, string PartNumber, string Revision, Guid ConditionId, string Condition, Guid UnitId, string Serial,
     Guid? LotId, string? LotNumber, Guid BenchId, string Bench, string Purpose, DateTimeOffset MeasuredAt, DateTimeOffset ReceivedAt,

@@ -26,11 +26,11 @@ public sealed class DuplicateTests(Lab lab)
         var scene = await RunScene.NewAsync(lab);
         var files = Enumerable.Range(0, 8).Select(i => ($"U{i}_x.csv", RunScene.Csv(0, $"{scene.LotId} {i}"))).ToArray();
         var seen = new ConcurrentBag<(string File, string Outcome, string RunId)>();
-        await Parallel.ForAsync(0, 16, new ParallelOptions { MaxDegreeOfParallelism = 16 }, async (i, _) =>
+        await Parallel.ForAsync(0, 16, new ParallelOptions { MaxDegreeOfParallelism = 16 }, async (i, token) =>
         {
             using var response = await scene.SendAsync([.. files.Skip(i % 8), .. files.Take(i % 8)]);
-            Assert.True(response.StatusCode is HttpStatusCode.OK or HttpStatusCode.Created, await response.Content.ReadAsStringAsync());
-            foreach (var result in JsonDocument.Parse(await response.Content.ReadAsStringAsync()).RootElement.GetProperty("results").EnumerateArray())
+            Assert.True(response.StatusCode is HttpStatusCode.OK or HttpStatusCode.Created, await response.Content.ReadAsStringAsync(token));
+            foreach (var result in JsonDocument.Parse(await response.Content.ReadAsStringAsync(token)).RootElement.GetProperty("results").EnumerateArray())
                 seen.Add((result.GetProperty("fileName").GetString()!, result.GetProperty("outcome").GetString()!, result.GetProperty("runId").GetString()!));
         });
         Assert.Equal(128, seen.Count);
