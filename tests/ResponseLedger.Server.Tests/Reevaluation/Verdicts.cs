@@ -1,6 +1,5 @@
 using Microsoft.EntityFrameworkCore;
 using ResponseLedger.Engine.Masks;
-using ResponseLedger.Store;
 using ResponseLedger.Store.Judging;
 
 namespace ResponseLedger.Server.Tests.Reevaluation;
