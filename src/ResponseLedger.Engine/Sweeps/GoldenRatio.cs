@@ -9,8 +9,7 @@ public sealed class GoldenRatio
 {
     private readonly double[] frequencyHz;
     private readonly double[] differenceDb;
-    private readonly double[] differenceDeg;
-    private readonly SuspectStep[] suspectSteps;
+    private readonly Lazy<(double[] Deg, SuspectStep[] SuspectSteps)> phase;
     private readonly Lazy<double[]> delayDifferenceSeconds;
 
     private GoldenRatio(Sweep run, Sweep golden, double[] unionHz)
@@ -19,8 +18,14 @@ public sealed class GoldenRatio
         differenceDb = new double[unionHz.Length];
         LevelDifference(run.GainCurve, golden.GainCurve, unionHz, differenceDb);
         bool hasPhase = run.HasPhase && golden.HasPhase;
-        differenceDeg = hasPhase ? Difference(run.PhaseCurve, golden.PhaseCurve, unionHz) : [];
-        suspectSteps = hasPhase ? Unwrapping.Unwrap(unionHz, differenceDeg) : [];
+        // Most masks compare levels only, so phase and delay wait until they are asked for.
+        phase = new Lazy<(double[], SuspectStep[])>(() =>
+        {
+            if (!hasPhase)
+                return ([], []);
+            double[] deg = Difference(run.PhaseCurve, golden.PhaseCurve, unionHz);
+            return (deg, Unwrapping.Unwrap(unionHz, deg));
+        });
         delayDifferenceSeconds = new Lazy<double[]>(() => hasPhase ? Difference(run.DelayCurve, golden.DelayCurve, unionHz) : []);
     }
 
@@ -31,13 +36,13 @@ public sealed class GoldenRatio
     public ReadOnlySpan<double> DifferenceDb => differenceDb;
 
     /// <summary>Phase of the ratio in degrees, unwrapped, the first in (-180, 180]; NaN where either is absent; empty when either run carries no phase.</summary>
-    public ReadOnlySpan<double> DifferenceDeg => differenceDeg;
+    public ReadOnlySpan<double> DifferenceDeg => phase.Value.Deg;
 
     /// <summary>Group delay of the run less that of the golden run in seconds; NaN where either is absent; empty when either run carries no phase.</summary>
     public ReadOnlySpan<double> DelayDifferenceSeconds => delayDifferenceSeconds.Value;
 
     /// <summary>Steps of the ratio's phase over 120 degrees.</summary>
-    public ReadOnlySpan<SuspectStep> SuspectSteps => suspectSteps;
+    public ReadOnlySpan<SuspectStep> SuspectSteps => phase.Value.SuspectSteps;
 
     /// <summary>The ratio of two runs; null when their spans share less than two frequencies of the union.</summary>
     /// <param name="run">The run.</param>
