@@ -47,7 +47,7 @@ internal sealed class ContainerServer : GivenServer
         var builder = new ContainerBuilder(image)
             .WithEnvironment("POSTGRES_PASSWORD", Password)
             .WithPortBinding(PostgresPort, assignRandomHostPort: true)
-            .WithCleanUp(true);
+            .WithAutoRemove(true);
         builder = isImported
             ? builder.WithImagePullPolicy(PullPolicy.Never).WithEntrypoint("/bin/sh", "-c").WithCommand(OwnCommand)
             : builder.WithCommand("-c", "max_connections=400");

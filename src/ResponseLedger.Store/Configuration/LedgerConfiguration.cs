@@ -9,7 +9,7 @@ internal sealed class LedgerConfiguration :
     IEntityTypeConfiguration<LedgerPosition>,
     IEntityTypeConfiguration<LedgerQueueRow>
 {
-    public void Configure(EntityTypeBuilder<LedgerEntryRow> builder) 
+    public void Configure(EntityTypeBuilder<LedgerEntryRow> builder)
         => builder.ToTable("ledger_entry", table => table.HasCheckConstraint("ck_ledger_entry_bytes", "octet_length(bytes) > 0"));
 
     public void Configure(EntityTypeBuilder<LedgerPosition> builder)

@@ -1,24 +1,36 @@
 using Npgsql;
-using static ResponseLedger.Store.Intake.IntakeBatch;
+using ResponseLedger.Store.Queries;
+using static ResponseLedger.Store.Queries.PreparedBatch;
 
 namespace ResponseLedger.Store.Intake;
 
 /// <summary>What stands in the store against a file, or beside it.</summary>
+/// <param name="DecidedLot">Number of the lot, where it is decided; else null.</param>
 /// <param name="First">The first run of the same bytes for the same unit, lot and purpose, or null.</param>
 /// <param name="PlacedElsewhere">Whether that run was reassigned since.</param>
 /// <param name="OtherSerial">A unit of the lot for which the same bytes stand, or null.</param>
 /// <param name="CountingRunId">The valid production run of the unit in the condition that was received first, or null.</param>
-internal sealed record IntakeFindings(Guid? First, bool PlacedElsewhere, string? OtherSerial, Guid? CountingRunId);
+internal sealed record IntakeFindings(string? DecidedLot, Guid? First, bool PlacedElsewhere, string? OtherSerial, Guid? CountingRunId);
 
 /// <summary>
-/// Looks for duplicates, the same bytes elsewhere in the lot, and an earlier valid run: one round trip. Inside an act it first
-/// takes two locks that end with the transaction, so that files sent at the same time see each other.
+/// Looks for duplicates, the same bytes elsewhere in the lot, and an earlier valid run: one round trip. Inside an act it first shares
+/// the lot's lock as <see cref="LotGate.EnterAsync"/> does, and takes two more, so that files sent at the same time see each other.
+/// Each statement sees what was committed before it began, so what follows the locks is read after they are held.
 /// </summary>
 internal static class IntakeChecks
 {
     // Classes of advisory locks. Every file takes them in this order and holds one of each, so no two files wait for each other.
     private const int SameBytesLock = 0x524C_0001;
     private const int SameUnitLock = 0x524C_0002;
+
+    private const string ShareLotSql = "select 1 from lot where id = $1 for share";
+
+    private const string DecidedSql =
+        """
+        select l.number from lot l
+        join decision d on d.lot_id = l.id and not exists (select 1 from reopening undone where undone.decision_id = d.id)
+        where l.id = $1
+        """;
 
     private const string LockSql = "select pg_advisory_xact_lock($1, hashtext($2))";
 
@@ -57,22 +69,26 @@ internal static class IntakeChecks
         await using var batch = On(db);
         if (locking)
         {
+            batch.Add(ShareLotSql, Of(order.LotId));
             var place = order.LotId?.ToString() ?? order.DeviceId.ToString();
             batch.Add(LockSql, Of(SameBytesLock), Of(place + Convert.ToHexString(filesDigest)));
             batch.Add(LockSql, Of(SameUnitLock), Of(place + order.ConditionId + file.Serial));
         }
 
+        batch.Add(DecidedSql, Of(order.LotId));
         batch.Add(SameBytesSql, Of(file.Sha256), Of(filesDigest), Of(order.DeviceId), Of(file.Serial), Of(order.LotId));
         batch.Add(CountingSql, Of(order.DeviceId), Of(file.Serial), Of(order.LotId), Of(order.ConditionId));
         await batch.PrepareAsync(cancellationToken);
         await using var reader = await batch.ExecuteReaderAsync(cancellationToken);
-        for (var skipped = locking ? 2 : 0; skipped > 0; skipped--)
+        for (var skipped = locking ? 3 : 0; skipped > 0; skipped--)
             await reader.NextResultAsync(cancellationToken);
         return await ReadAsync(reader, order, cancellationToken);
     }
 
     private static async Task<IntakeFindings> ReadAsync(NpgsqlDataReader reader, IntakeOrder order, CancellationToken cancellationToken)
     {
+        var decidedLot = await reader.ReadAsync(cancellationToken) ? reader.GetString(0) : null;
+        await reader.NextResultAsync(cancellationToken);
         Guid? first = null;
         var placedElsewhere = false;
         string? otherSerial = null;
@@ -93,6 +109,6 @@ internal static class IntakeChecks
 
         await reader.NextResultAsync(cancellationToken);
         var counting = order.Purpose == RunPurposes.Production && await reader.ReadAsync(cancellationToken) ? reader.GetGuid(0) : (Guid?)null;
-        return new IntakeFindings(first, placedElsewhere, otherSerial, counting);
+        return new IntakeFindings(decidedLot, first, placedElsewhere, otherSerial, counting);
     }
 }

@@ -1,6 +1,7 @@
 using Microsoft.EntityFrameworkCore;
 using Npgsql;
-using static ResponseLedger.Store.Intake.IntakeBatch;
+using ResponseLedger.Store.Queries;
+using static ResponseLedger.Store.Queries.PreparedBatch;
 
 namespace ResponseLedger.Store.Intake;
 

@@ -6,7 +6,8 @@ using ResponseLedger.Formats;
 using ResponseLedger.Records.Verdicts;
 using ResponseLedger.Store.Acts;
 using ResponseLedger.Store.Curves;
-using static ResponseLedger.Store.Intake.IntakeBatch;
+using ResponseLedger.Store.Queries;
+using static ResponseLedger.Store.Queries.PreparedBatch;
 
 namespace ResponseLedger.Store.Intake;
 

@@ -8,7 +8,6 @@ using ResponseLedger.Records.Decisions;
 using ResponseLedger.Records.Verdicts;
 using ResponseLedger.Store.Acts;
 using ResponseLedger.Store.Judging;
-using ResponseLedger.Store.Queries;
 
 namespace ResponseLedger.Store.Intake;
 
@@ -79,12 +78,11 @@ public sealed class RunIntake(
         Act act, IntakeOrder order, IntakeFile file, byte[] content, byte[] filesDigest, ReadFile read, IntakeVerdict? judged,
         StoredVerdictRow? verdict, CancellationToken cancellationToken)
     {
-        var lot = order.LotId is { } lotId ? await LotGate.EnterAsync(act.Db, lotId, cancellationToken) : null;
         var found = await IntakeChecks.FindAsync(act.Db, order, file, filesDigest, locking: true, cancellationToken);
         if (found.First is { } first)
             throw new NotTakenException(IntakeResult.Duplicate(file.Name, file.Serial, first, found.PlacedElsewhere));
-        if (lot is { Standing: not null })
-            throw Refuse(file, IntakeNotes.LotDecided, IntakeNotes.DecidedSentence(lot.Lot.Number));
+        if (found.DecidedLot is { } decided)
+            throw Refuse(file, IntakeNotes.LotDecided, IntakeNotes.DecidedSentence(decided));
         if (found.OtherSerial is { } other && !order.OtherUnitAcknowledged)
             throw Refuse(file, IntakeNotes.SameFileOtherUnit, IntakeNotes.OtherUnitSentence(other));
 

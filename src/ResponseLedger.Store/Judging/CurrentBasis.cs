@@ -1,7 +1,7 @@
 using Microsoft.EntityFrameworkCore;
 using ResponseLedger.Records.Verdicts;
 using ResponseLedger.Store.Acts;
-using ResponseLedger.Store.Model;
+using ResponseLedger.Store.Queries;
 
 namespace ResponseLedger.Store.Judging;
 
@@ -19,25 +19,28 @@ public sealed record CurrentBasis(Guid BasisId, Guid ConditionId, Guid MaskId, i
 /// </summary>
 public static class CurrentBases
 {
-    /// <summary>The basis in force, or null where the condition has no released mask.</summary>
-    public static async Task<CurrentBasis?> FindAsync(ResponseLedgerContext db, Guid conditionId, CancellationToken cancellationToken)
-    {
-        ArgumentNullException.ThrowIfNull(db);
-        return await Query(db, db.Conditions.Where(c => c.Id == conditionId)).SingleOrDefaultAsync(cancellationToken);
-    }
+    // Asked for by every upload, so prepared: planning these lookups takes longer than running them.
+    private const string Sql =
+        """
+        select b.id, m.mask_id, m.number, b.golden_reading_id
+        from condition c
+        cross join lateral (select mask_id, number from mask_revision where condition_id = c.id order by number desc limit 1) m
+        left join lateral (select reading_id from golden_choice where condition_id = c.id order by number desc limit 1) g on true
+        cross join lateral (select decision_rule from device_setting where device_id = c.device_id order by number desc limit 1) s
+        join basis b on b.condition_id = c.id and b.mask_id = m.mask_id and b.golden_reading_id is not distinct from g.reading_id
+            and b.decision_rule = s.decision_rule and b.engine_version = $2
+        where c.id = $1
+        order by b.at desc
+        limit 1
+        """;
 
-    /// <summary>The bases in force of these conditions; those without a released mask are left out. To be composed: one round trip.</summary>
-    public static IQueryable<CurrentBasis> Query(ResponseLedgerContext db, IQueryable<Condition> conditions)
+    /// <summary>The basis in force, or null where the condition has no released mask.</summary>
+    public static Task<CurrentBasis?> FindAsync(ResponseLedgerContext db, Guid conditionId, CancellationToken cancellationToken)
     {
         ArgumentNullException.ThrowIfNull(db);
-        return
-            from condition in conditions
-            from mask in db.MaskRevisions.Where(m => m.ConditionId == condition.Id).OrderByDescending(m => m.Number).Take(1)
-            let golden = db.GoldenChoices.Where(g => g.ConditionId == condition.Id).OrderByDescending(g => g.Number).Select(g => (Guid?)g.ReadingId).FirstOrDefault()
-            let rule = db.DeviceSettings.Where(s => s.DeviceId == condition.DeviceId).OrderByDescending(s => s.Number).Select(s => s.DecisionRule).First()
-            from basis in db.Bases.Where(b => b.ConditionId == condition.Id && b.MaskId == mask.MaskId && b.GoldenReadingId == golden
-                && b.DecisionRule == rule && b.EngineVersion == Judge.EngineVersion)
-            select new CurrentBasis(basis.Id, condition.Id, mask.MaskId, mask.Number, basis.GoldenReadingId);
+        return db.Database.CurrentTransaction is null
+            ? db.Database.CreateExecutionStrategy().ExecuteAsync(token => FindOnceAsync(db, conditionId, token), cancellationToken)
+            : FindOnceAsync(db, conditionId, cancellationToken);
     }
 
     /// <summary>Makes the basis row that is in force after what the act has added; null where no mask is released. Saves what the act has added so far.</summary>
@@ -58,6 +61,25 @@ public static class CurrentBases
              """,
             cancellationToken);
         return await FindAsync(act.Db, conditionId, cancellationToken);
+    }
+
+    private static async Task<CurrentBasis?> FindOnceAsync(ResponseLedgerContext db, Guid conditionId, CancellationToken cancellationToken)
+    {
+        await db.Database.OpenConnectionAsync(cancellationToken);
+        try
+        {
+            await using var batch = PreparedBatch.On(db);
+            batch.Add(Sql, PreparedBatch.Of(conditionId), PreparedBatch.Of(Judge.EngineVersion));
+            await batch.PrepareAsync(cancellationToken);
+            await using var row = await batch.ExecuteReaderAsync(cancellationToken);
+            return await row.ReadAsync(cancellationToken)
+                ? new CurrentBasis(row.GetGuid(0), conditionId, row.GetGuid(1), row.GetInt32(2), row.GuidOrNull(3))
+                : null;
+        }
+        finally
+        {
+            await db.Database.CloseConnectionAsync();
+        }
     }
 
     private static async Task<Named?> NamedAsync(ResponseLedgerContext db, Guid conditionId, CancellationToken cancellationToken)

@@ -71,7 +71,7 @@ public sealed class ReadRunsTests(Lab lab)
         var id = await scene.AcceptedAsync("../../Größe_a.csv", content);
         using var response = await scene.Engineer.GetAsync($"/api/runs/{id}/file");
         Assert.Equal(HttpStatusCode.OK, response.StatusCode);
-        Assert.True(content.AsSpan().SequenceEqual(await response.Content.ReadAsByteArrayAsync()));
+        Assert.Equal(content, await response.Content.ReadAsByteArrayAsync());
         Assert.Equal("application/octet-stream", response.Content.Headers.ContentType!.MediaType);
         Assert.Equal("attachment", response.Content.Headers.ContentDisposition!.DispositionType);
         Assert.Equal("Größe_a.csv", response.Content.Headers.ContentDisposition.FileNameStar);

@@ -21,8 +21,15 @@ internal static class SceneDecision
             {
                 var decision = new Decision
                 {
-                    Id = act.NewId(), LotId = lotId, Ordinal = 1, Kind = "reject", Reason = "for the test",
-                    Record = """{"conditions":[]}"""u8.ToArray(), Sha256 = SHA256.HashData("""{"conditions":[]}"""u8), At = act.At, ById = Guid.Empty,
+                    Id = act.NewId(),
+                    LotId = lotId,
+                    Ordinal = 1,
+                    Kind = "reject",
+                    Reason = "for the test",
+                    Record = """{"conditions":[]}"""u8.ToArray(),
+                    Sha256 = SHA256.HashData("""{"conditions":[]}"""u8),
+                    At = act.At,
+                    ById = Guid.Empty,
                 };
                 act.Db.Decisions.Add(decision);
                 var pins = await (
@@ -33,7 +40,12 @@ internal static class SceneDecision
                     select new { assignment.UnitId, assignment.ConditionId, assignment.RunId, reading.Id, VerdictId = verdict.Id }).ToListAsync(token);
                 act.Db.DecisionVerdicts.AddRange(pins.Select(p => new DecisionVerdict
                 {
-                    DecisionId = decision.Id, UnitId = p.UnitId, ConditionId = p.ConditionId, RunId = p.RunId, ReadingId = p.Id, VerdictId = p.VerdictId,
+                    DecisionId = decision.Id,
+                    UnitId = p.UnitId,
+                    ConditionId = p.ConditionId,
+                    RunId = p.RunId,
+                    ReadingId = p.Id,
+                    VerdictId = p.VerdictId,
                 }));
                 act.Record("lot.decided", new JsonObject { ["lotId"] = scene.LotId }, new JsonObject { ["decision"] = "reject" });
                 return true;

@@ -2,10 +2,10 @@ using Microsoft.EntityFrameworkCore;
 using Microsoft.EntityFrameworkCore.Storage;
 using Npgsql;
 
-namespace ResponseLedger.Store.Intake;
+namespace ResponseLedger.Store.Queries;
 
-/// <summary>Several statements of an act in one round trip, prepared once a connection.</summary>
-internal static class IntakeBatch
+/// <summary>Several statements in one round trip, prepared once a connection.</summary>
+internal static class PreparedBatch
 {
     /// <summary>A batch on the context's connection and inside its transaction, if it has one.</summary>
     public static NpgsqlBatch On(ResponseLedgerContext db)
