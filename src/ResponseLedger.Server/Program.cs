@@ -6,7 +6,8 @@ try
     await using var house = await House.OpenAsync(builder);
     var app = builder.Build();
     House.Use(app);
-    await app.RunAsync();
+    await House.ListenAsync(app);
+    await app.WaitForShutdownAsync();
     return Environment.ExitCode;
 }
 catch (Exception failure) when (StartFailure.Tell(failure) is { } message)

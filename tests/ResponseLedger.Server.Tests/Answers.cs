@@ -12,7 +12,7 @@ public static class Answers
         var body = await response.Content.ReadAsStringAsync();
         Assert.True(
             response.StatusCode == expected,
-            $"{response.RequestMessage?.Method} {response.RequestMessage?.RequestUri?.PathAndQuery} answered {(int)response.StatusCode} instead of {(int)expected}: {body}");
+            $"{response.RequestMessage?.Method} {response.RequestMessage?.RequestUri?.PathAndQuery} answered {(int)response.StatusCode} instead of {(int)expected}: {body}{(response.StatusCode == HttpStatusCode.InternalServerError ? FaultLog.Last : "")}");
         return body.Length == 0 ? default : JsonDocument.Parse(body).RootElement;
     }
 

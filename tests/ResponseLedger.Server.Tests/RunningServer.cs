@@ -36,7 +36,7 @@ public sealed class RunningServer : IAsyncDisposable
             EnvironmentName = "Production",
             Args = [.. settings.Where(s => s.Value is not null).Select(s => $"--{s.Key}={s.Value}")],
         });
-        builder.Logging.ClearProviders();
+        builder.Logging.ClearProviders().AddProvider(new FaultLog());
         adjust?.Invoke(builder);
         var house = await Start.House.OpenAsync(builder);
         var app = builder.Build();

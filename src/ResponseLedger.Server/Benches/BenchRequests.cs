@@ -8,13 +8,17 @@ namespace ResponseLedger.Server.Benches;
 internal sealed record NewBench(string? Name);
 
 /// <summary>What is to change of a bench; members left out stay, null clears.</summary>
-/// <param name="SerialPattern">Regular expression that finds the serial in a file's name: its group "serial", or the whole match.</param>
-/// <param name="NoiseFloorDb">Level in dB under which phase is not to be believed.</param>
-/// <param name="Remark">Place, instruments, calibration; at most 2,000 characters.</param>
-internal sealed record BenchChange(
-    Given<string?> SerialPattern = default,
-    Given<double?> NoiseFloorDb = default,
-    Given<string?> Remark = default);
+internal sealed record BenchChange
+{
+    /// <summary>Regular expression that finds the serial in a file's name: its group "serial", or the whole match.</summary>
+    public Given<string?> SerialPattern { get; init; }
+
+    /// <summary>Level in dB under which phase is not to be believed.</summary>
+    public Given<double?> NoiseFloorDb { get; init; }
+
+    /// <summary>Place, instruments, calibration; at most 2,000 characters.</summary>
+    public Given<string?> Remark { get; init; }
+}
 
 internal sealed record BenchExists(string Name)
     : Refusal(StatusCodes.Status409Conflict, "benchExists", $"There is a bench \"{Name}\" already.");

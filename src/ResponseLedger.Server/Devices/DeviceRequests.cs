@@ -14,7 +14,6 @@ internal sealed record NewDevice(string? PartNumber, string? Revision, string? T
 /// <param name="SigningNeedsQuality">Whether only the role quality may sign.</param>
 /// <param name="SigningNeedsTwo">Whether a lot needs two signers; not offered by this version.</param>
 /// <param name="SigningExcludesOwnRuns">Whether nobody may sign for a lot with runs that they sent themselves.</param>
-/// <param name="RetestsAllowed">How many retests of a unit in a condition may come to count; null for any number.</param>
 /// <param name="DecisionRule">Only "simple" is offered by this version.</param>
 /// <param name="Inverting">Whether the device is meant to invert.</param>
 internal sealed record DeviceChange(
@@ -22,9 +21,12 @@ internal sealed record DeviceChange(
     bool? SigningNeedsQuality = null,
     bool? SigningNeedsTwo = null,
     bool? SigningExcludesOwnRuns = null,
-    Given<int?> RetestsAllowed = default,
     string? DecisionRule = null,
-    bool? Inverting = null);
+    bool? Inverting = null)
+{
+    /// <summary>How many retests of a unit in a condition may come to count; null for any number.</summary>
+    public Given<int?> RetestsAllowed { get; init; }
+}
 
 /// <summary>A condition to be added.</summary>
 /// <param name="Name">1 to 100 characters, trimmed; unique within the device.</param>

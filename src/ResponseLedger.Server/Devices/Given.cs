@@ -26,7 +26,17 @@ internal sealed class GivenConverterFactory : JsonConverterFactory
         public override bool HandleNull => true;
 
         public override Given<T> Read(ref Utf8JsonReader reader, Type typeToConvert, JsonSerializerOptions options)
-            => new(true, JsonSerializer.Deserialize<T>(ref reader, options)!);
+        {
+            try
+            {
+                return new(true, JsonSerializer.Deserialize<T>(ref reader, options)!);
+            }
+            catch (JsonException)
+            {
+                // A fresh one: the serializer outside adds the path of the member, which the inner one does not know.
+                throw new JsonException();
+            }
+        }
 
         public override void Write(Utf8JsonWriter writer, Given<T> value, JsonSerializerOptions options)
             => JsonSerializer.Serialize(writer, value.Value, options);

@@ -33,6 +33,7 @@ internal static class PeopleServices
             .AddEntityFrameworkStores<ResponseLedgerContext>()
             .AddSignInManager()
             .AddClaimsPrincipalFactory<PersonClaims>();
+        services.AddScoped<ISecurityStampValidator, SessionStamp>();
         services.Configure<PasswordHasherOptions>(options => options.IterationCount = HashIterations);
         services.AddSingleton<IPasswordHasher<Person>, PasswordHasher<Person>>();
         services.Configure<SecurityStampValidatorOptions>(options => options.ValidationInterval = StampInterval);

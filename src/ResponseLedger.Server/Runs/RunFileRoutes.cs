@@ -28,9 +28,9 @@ internal static class RunFileRoutes
 
     public static async Task<FileContentHttpResult> ExportAsync(Guid id, string? format, HttpResponse response, ResponseLedgerContext db, CancellationToken cancellationToken)
     {
+        var readingId = await ReadRuns.ReadingOfAsync(db, id, cancellationToken);
         if (format is not ("csv" or "touchstone"))
             throw new RefusedException(new FieldRefused("format", "The format is csv or touchstone."));
-        var readingId = await ReadRuns.ReadingOfAsync(db, id, cancellationToken);
         var sweep = await db.SweepOfAsync(readingId, cancellationToken) ?? throw new RefusedException(new NothingThere("run"));
         var serial = await (
             from assignment in db.RunAssignments.Where(a => a.RunId == id).OrderByDescending(a => a.Number).Take(1)

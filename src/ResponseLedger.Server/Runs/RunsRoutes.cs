@@ -8,7 +8,6 @@ namespace ResponseLedger.Server.Runs;
 /// <summary>The routes of this feature and the services that they need.</summary>
 internal static class RunsRoutes
 {
-    private const string Multipart = "multipart/form-data";
     private const string Bytes = "application/octet-stream";
 
     public static void AddServices(IServiceCollection services)
@@ -32,13 +31,13 @@ internal static class RunsRoutes
     private static void MapSending(RouteGroupBuilder runs)
     {
         runs.MapPost("", UploadRoute.HandleAsync).RequireAuthorization(Policies.SendRuns)
-            .Accepts<UploadDocument>(Multipart)
+            .TakesForm<UploadDocument>()
             .Produces<UploadAnswer>().Produces<UploadAnswer>(StatusCodes.Status201Created)
             .ProducesProblem(StatusCodes.Status403Forbidden).ProducesProblem(StatusCodes.Status413PayloadTooLarge)
             .ProducesProblem(StatusCodes.Status415UnsupportedMediaType).ProducesValidationProblem(StatusCodes.Status422UnprocessableEntity)
             .WithName("sendRuns").WithSummary("Sends sweep files: each is taken or refused whole, and answered with its verdict.");
         runs.MapPost("/preview", PreviewRoute.HandleAsync).RequireAuthorization(Policies.Operate)
-            .Accepts<PreviewDocument>(Multipart)
+            .TakesForm<PreviewDocument>()
             .ProducesProblem(StatusCodes.Status413PayloadTooLarge).ProducesProblem(StatusCodes.Status415UnsupportedMediaType)
             .ProducesValidationProblem(StatusCodes.Status422UnprocessableEntity)
             .WithName("previewFile").WithSummary("Reads a file and stores nothing: what each column was taken for, what is wrong, and the curve.");

@@ -1,6 +1,7 @@
 using Microsoft.AspNetCore.Authorization;
 using Microsoft.AspNetCore.OpenApi;
 using Microsoft.OpenApi;
+using ResponseLedger.Server.Devices;
 using ResponseLedger.Server.Http;
 using ResponseLedger.Server.People;
 
@@ -42,6 +43,7 @@ internal static class Description
             return Task.CompletedTask;
         });
         options.AddOperationTransformer(Describe);
+        options.AddSchemaTransformer(DescribeGivenAsync);
     });
 
     private static Task Describe(OpenApiOperation operation, OpenApiOperationTransformerContext context, CancellationToken cancellationToken)
@@ -67,6 +69,21 @@ internal static class Description
         Problem(operation, 429, "Too many requests; Retry-After says when to go on.");
         Problem(operation, 503, "The server is starting; Retry-After says when to go on.");
         return Task.CompletedTask;
+    }
+
+    // A member that may be left out or set to null is described as the value that it takes, or null.
+    private static async Task DescribeGivenAsync(OpenApiSchema schema, OpenApiSchemaTransformerContext context, CancellationToken cancellationToken)
+    {
+        var type = context.JsonTypeInfo.Type;
+        if (!type.IsGenericType || type.GetGenericTypeDefinition() != typeof(Given<>))
+            return;
+
+        var value = type.GetGenericArguments()[0];
+        var described = await context.GetOrCreateSchemaAsync(Nullable.GetUnderlyingType(value) ?? value, null, cancellationToken);
+        schema.Type = described.Type | JsonSchemaType.Null;
+        schema.Format = described.Format;
+        schema.Properties = null;
+        schema.Required = null;
     }
 
     private static OpenApiSecurityRequirement Requirement(string scheme, OpenApiOperationTransformerContext context)

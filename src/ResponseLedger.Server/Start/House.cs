@@ -1,3 +1,4 @@
+using System.Net.Sockets;
 using FluentValidation;
 using Microsoft.AspNetCore.Http.Features;
 using Microsoft.Extensions.DependencyInjection.Extensions;
@@ -83,6 +84,21 @@ internal sealed class House : IAsyncDisposable
         SignOffRoutes.Map(api);
         RunsRoutes.Map(api);
         TrailRoutes.Map(api);
+    }
+
+    /// <summary>Starts to listen.</summary>
+    /// <exception cref="StartFailure">An address that was set cannot be listened at.</exception>
+    public static async Task ListenAsync(WebApplication app)
+    {
+        try
+        {
+            await app.StartAsync();
+        }
+        catch (Exception failure) when (failure is SocketException or IOException)
+        {
+            var addresses = app.Configuration[WebHostDefaults.ServerUrlsKey] ?? UsualAddress;
+            throw new StartFailure($"it cannot listen at {addresses}. {failure.Message} Set ASPNETCORE_URLS to an address of this machine that is free.", failure);
+        }
     }
 
     /// <summary>Stops the embedded store.</summary>

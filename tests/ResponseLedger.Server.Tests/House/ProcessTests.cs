@@ -21,12 +21,13 @@ public sealed class ProcessTests
             ["ConnectionStrings__Ledger"] = store.ServerConnectionString,
             ["ConnectionStrings__LedgerOwner"] = store.OwnerConnectionString,
             ["RESPONSELEDGER_ADMIN_EMAIL"] = "first@example.test",
+            ["RESPONSELEDGER_DEMO"] = "0",
         });
         try
         {
             var printed = await UntilAsync(process, "one-time password: (\\S+)");
             var address = Regex.Match(printed.Before, "Now listening on: (\\S+)").Groups[1].Value;
-            await UntilAsync(process, "Ready\\.");
+            await UntilAsync(process, "ResponseLedger is ready");
             using var client = new HttpClient { BaseAddress = new Uri(address) };
             client.DefaultRequestHeaders.Add("X-ResponseLedger", "1");
             var oneTime = printed.Match.Groups[1].Value;

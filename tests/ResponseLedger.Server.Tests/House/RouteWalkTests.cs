@@ -39,7 +39,7 @@ public sealed partial class RouteWalkTests(Lab lab)
             }
         }
 
-        Assert.Empty(findings);
+        Assert.True(findings.Count == 0, string.Join(Environment.NewLine, findings));
     }
 
     [Fact]
@@ -55,7 +55,7 @@ public sealed partial class RouteWalkTests(Lab lab)
             await CheckFormAsync(route, response, findings);
         }
 
-        Assert.Empty(findings);
+        Assert.True(findings.Count == 0, string.Join(Environment.NewLine, findings));
     }
 
     [Theory]
@@ -77,7 +77,7 @@ public sealed partial class RouteWalkTests(Lab lab)
             await CheckFormAsync(route, response, findings);
         }
 
-        Assert.Empty(findings);
+        Assert.True(findings.Count == 0, string.Join(Environment.NewLine, findings));
     }
 
     [Fact]
@@ -93,7 +93,7 @@ public sealed partial class RouteWalkTests(Lab lab)
             await CheckFormAsync(route, response, findings);
         }
 
-        Assert.Empty(findings);
+        Assert.True(findings.Count == 0, string.Join(Environment.NewLine, findings));
     }
 
     [Theory]
@@ -115,7 +115,7 @@ public sealed partial class RouteWalkTests(Lab lab)
         }
 
         client.Dispose();
-        Assert.Empty(findings);
+        Assert.True(findings.Count == 0, string.Join(Environment.NewLine, findings));
     }
 
     [Fact]
@@ -159,7 +159,7 @@ public sealed partial class RouteWalkTests(Lab lab)
     {
         var status = (int)response.StatusCode;
         if (status is >= 300 and < 400 or >= 500)
-            findings.Add($"{what} answered {status}: {await response.Content.ReadAsStringAsync()}");
+            findings.Add($"{what} answered {status}: {await response.Content.ReadAsStringAsync()}{FaultLog.Last}");
         if (status >= 400 && response.Content.Headers.ContentType?.MediaType != "application/problem+json")
             findings.Add($"{what} answered {status} without problem details");
     }

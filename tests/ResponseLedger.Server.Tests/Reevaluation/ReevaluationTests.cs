@@ -108,7 +108,7 @@ public sealed class ReevaluationTests(Lab lab)
         {
             var sha = act.Db.Readings.Where(r => r.RunId == broken[0]).Select(r => r.GridSha256).First();
             var reading = new Reading { Id = act.NewId(), RunId = broken[0], Number = 2, Reader = "delimited", ReaderVersion = 1, GridSha256 = sha, Form = 1, Points = 7, Notes = "[]", At = act.At };
-            act.Db.AddRange(reading, new Curve { ReadingId = reading.Id, Planes = new byte[8] });
+            act.Db.AddRange(reading, new Curve { ReadingId = reading.Id, Planes = new byte[16] });
             return true;
         });
         var sound = await lab.AddRunsAsync(device.Id, device.ConditionId, lot, [0, 0]);
