@@ -8,10 +8,10 @@ internal static class Rooms
     public static IReadOnlyDictionary<string, Room> All { get; } = new Dictionary<string, Room>
     {
         ["Engine"] = new([], ["System.Numerics.Tensors", "MathNet.Numerics"]),
-        ["Formats"] = new(["Engine"], ["Sep", "Apache.Arrow"]),
+        ["Formats"] = new(["Engine"], ["Apache.Arrow"]),
         ["Ledger"] = new([], ["NSec.Cryptography"]),
         ["Records"] = new(["Engine", "Formats", "Ledger"], []),
-        ["Store"] = new(["Engine", "Ledger", "Records"],
+        ["Store"] = new(["Engine", "Formats", "Ledger", "Records"],
             ["Npgsql", "Npgsql.EntityFrameworkCore.PostgreSQL", "EFCore.NamingConventions",
              "Microsoft.AspNetCore.Identity.EntityFrameworkCore", "Microsoft.AspNetCore.DataProtection.EntityFrameworkCore"]),
         ["Migrations"] = new(["Store"], ["Microsoft.EntityFrameworkCore.Design"]),

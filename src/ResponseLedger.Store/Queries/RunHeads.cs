@@ -14,7 +14,7 @@ public static class RunHeads
         """
         select r.id, r.received_no, r.device_id, dev.part_number, dev.revision, a.condition_id, k.name, a.unit_id, u.serial,
                a.lot_id, l.number, r.bench_id, b.name, r.purpose, r.measured_at, r.at, coalesce(p.display_name, t.name),
-               (select json_agg(json_build_object('name', f.name, 'size', octet_length(s.content), 'sha256', encode(f.sha256, 'hex')) order by f.ordinal)::text
+               (select coalesce(json_agg(json_build_object('name', f.name, 'size', octet_length(s.content), 'sha256', encode(f.sha256, 'hex')) order by f.ordinal), '[]')::text
                 from run_file f join file s on s.sha256 = f.sha256 where f.run_id = r.id),
                r.circumstances, rd.id, rd.number, rd.reader, rd.reader_version, rd.columns, rd.notes, rd.form, rd.points,
                substring(g.planes from 1 for 8), substring(g.planes from octet_length(g.planes) - 7 for 8),

@@ -13,7 +13,22 @@ public sealed class FilterReferenceTests
     private static readonly Dictionary<string, JsonElement> Filters =
         ReferenceData.Json("filters.json").GetProperty("filters").EnumerateArray().ToDictionary(f => f.GetProperty("id").GetString()!);
 
+    /// <summary>
+    /// The case whose two peaks, both of the reference set, differ by more than the 0.001 dB that its README allows: 0.0010041 dB. There the
+    /// tight comparison on the grid stands alone, and <see cref="The_set_disagrees_with_itself_about_one_peak"/> keeps the finding.
+    /// </summary>
+    private const string PeakDisagreement = "chebyshev1-lp-3-1p0db";
+
     public static TheoryData<string> Ids => new(Filters.Keys);
+
+    [Fact]
+    public void The_set_disagrees_with_itself_about_one_peak()
+    {
+        var filter = Filters[PeakDisagreement];
+        double continuousDb = filter.GetProperty("measures").GetProperty("peak").GetProperty("gainDb").GetDouble();
+        double onGridDb = filter.GetProperty("straightLineOnGrid").GetProperty("peak").GetProperty("gainDb").GetDouble();
+        Assert.Equal(0.001004056, continuousDb - onGridDb, 1e-9);
+    }
 
     [Fact]
     public void All_twenty_six_filters_are_here() => Assert.Equal(26, Filters.Count);
@@ -62,7 +77,8 @@ public sealed class FilterReferenceTests
         double cutoffTolerance = id.StartsWith("chebyshev", StringComparison.Ordinal) || id.StartsWith("elliptic", StringComparison.Ordinal) ? 6e-4 : 3e-4;
         // The all-pass has no peak of its own: its level is the same everywhere.
         var peak = Part(measures, "peak") ?? measures.GetProperty("passbandLevel");
-        Measuring.Close(peak.GetProperty("gainDb").GetDouble(), run.Measure("peak").Value("gainDb"), PeakToleranceDb(id), "peak");
+        if (id != PeakDisagreement)
+            Measuring.Close(peak.GetProperty("gainDb").GetDouble(), run.Measure("peak").Value("gainDb"), id == "resonant-bp-q25" ? 0.04 : 0.001, "peak");
 
         foreach (string drop in DropsOf(filter, run))
         {
@@ -138,17 +154,6 @@ public sealed class FilterReferenceTests
         // Between grid points the highest level of a band is that of a chord: 0.01 dB at the maxima of the elliptic stop band.
         Measuring.Close(expected, attenuation.Value("attenuationDb"), 0.01, "attenuation");
     }
-
-    /// <summary>
-    /// The set's README says 0.001 dB (0.04 dB for the sharp resonance). One case of the set misses that by itself: the straight-line peak of
-    /// chebyshev1-lp-3-1p0db stands 0.0010041 dB under the continuous one, 4e-6 dB over the stated tolerance.
-    /// </summary>
-    private static double PeakToleranceDb(string id) => id switch
-    {
-        "resonant-bp-q25" => 0.04,
-        "chebyshev1-lp-3-1p0db" => 0.0010041,
-        _ => 0.001,
-    };
 
     /// <summary>The drops with cutoffs in the set. The all-pass has none: there, no cutoff is reached on either side.</summary>
     private static string[] DropsOf(JsonElement filter, Sweep run)

