@@ -46,12 +46,7 @@ public static class LotHeads
          where true
              {(filter.BeforeId is null ? "" : "and l.id < @before")}
              {(filter.Device is null ? "" : "and l.device_id in (select id from device where id::text = lower(@device) or part_number = @device or part_number || '/' || revision = @device)")}
-             {filter.State switch
-        {
-            null => "",
-            "open" => "and decided.id is null",
-            _ => "and decided.kind = @kind",
-        }}
+             {(filter.State is null ? "" : filter.State == "open" ? "and decided.id is null" : "and decided.kind = @kind")}
              {(filter.Search is null ? "" : """
               and (position(lower(@search) in lower(l.number)) > 0 or position(lower(@search) in lower(dev.part_number)) > 0
                    or l.id in (select d.lot_id from lot_unit d join unit u on u.id = d.unit_id where u.serial = @search)

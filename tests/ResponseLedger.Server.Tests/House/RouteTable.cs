@@ -58,7 +58,7 @@ internal static class RouteTable
         ["GET /api/benches"] = "read",
         ["POST /api/benches"] = "manage",
         ["GET /api/benches/{id}"] = "read",
-        ["PATCH /api/benches/{id}"] = "manage",
+        ["PATCH /api/benches/{id}"] = "engineer",
         ["GET /api/lots"] = "read",
         ["POST /api/lots"] = "operate",
         ["GET /api/lots/{id}"] = "read",

@@ -35,7 +35,7 @@ internal static class Verdicts
     public static Task<Guid> DecideAsync(this Lab lab, Guid lotId, int ordinal = 1)
         => lab.ActAsync("lot.decided", act =>
         {
-            var record = "{\"conditions\":[]}"u8.ToArray();
+            var record = """{"conditions":[],"meaning":"rejected","signer":{"personId":"0199aaaa-0000-7000-8000-000000000002","name":"Test","email":"test@example.test"}}"""u8.ToArray();
             var decision = new Store.Model.Decision
             {
                 Id = act.NewId(),

@@ -1,57 +1,17 @@
-using System.Security.Cryptography;
-using System.Text.Json.Nodes;
+using System.Net;
+using System.Net.Http.Json;
 using Microsoft.EntityFrameworkCore;
 using Microsoft.Extensions.DependencyInjection;
-using ResponseLedger.Ledger;
 using ResponseLedger.Store;
-using ResponseLedger.Store.Acts;
-using ResponseLedger.Store.Model;
 
 namespace ResponseLedger.Server.Tests.Runs;
 
-/// <summary>Decides a lot by rows alone, so that these tests stand without the routes of sign-off.</summary>
+/// <summary>What these tests need around runs: a decided lot, and looks at the store.</summary>
 internal static class SceneDecision
 {
     public static async Task DecideAsync(this RunScene scene)
-    {
-        var lotId = Guid.Parse(scene.LotId);
-        await scene.Lab.Services.GetRequiredService<ActRunner>().RunAsync(
-            Actor.Server,
-            async (act, token) =>
-            {
-                var decision = new Decision
-                {
-                    Id = act.NewId(),
-                    LotId = lotId,
-                    Ordinal = 1,
-                    Kind = "reject",
-                    Reason = "for the test",
-                    Record = """{"conditions":[]}"""u8.ToArray(),
-                    Sha256 = SHA256.HashData("""{"conditions":[]}"""u8),
-                    At = act.At,
-                    ById = Guid.Empty,
-                };
-                act.Db.Decisions.Add(decision);
-                var pins = await (
-                    from assignment in act.Db.RunAssignments
-                    join reading in act.Db.Readings on assignment.RunId equals reading.RunId
-                    join verdict in act.Db.Verdicts on reading.Id equals verdict.ReadingId
-                    where assignment.LotId == lotId
-                    select new { assignment.UnitId, assignment.ConditionId, assignment.RunId, reading.Id, VerdictId = verdict.Id }).ToListAsync(token);
-                act.Db.DecisionVerdicts.AddRange(pins.Select(p => new DecisionVerdict
-                {
-                    DecisionId = decision.Id,
-                    UnitId = p.UnitId,
-                    ConditionId = p.ConditionId,
-                    RunId = p.RunId,
-                    ReadingId = p.Id,
-                    VerdictId = p.VerdictId,
-                }));
-                act.Record("lot.decided", new JsonObject { ["lotId"] = scene.LotId }, new JsonObject { ["decision"] = "reject" });
-                return true;
-            },
-            default);
-    }
+        => await (await scene.Engineer.PostAsJsonAsync($"/api/lots/{scene.LotId}/decisions", new { decision = "reject", reason = "For the test.", password = Lab.Password }))
+            .ShouldBeAsync(HttpStatusCode.Created);
 
     /// <summary>How many rows there are of the things that an upload makes.</summary>
     public static async Task<(int Runs, int Files, int Units, int Entries)> CountAsync(this Lab lab)
