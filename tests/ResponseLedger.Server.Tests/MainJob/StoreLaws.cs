@@ -20,10 +20,11 @@ internal static class StoreLaws
             """),
         ("a run has its verdict",
             "select count(*) from run r where not exists (select 1 from reading d join verdict v on v.reading_id = d.id where d.run_id = r.id)"),
-        ("a run has one ledger entry",
-            "select count(*) from run r where (select count(*) from ledger_entry e where e.kind = 'run.received' and convert_from(e.bytes, 'UTF8')::jsonb #>> '{subject,runId}' = r.id::text) <> 1"),
-        ("a ledger entry of a run has its run",
-            "select count(*) from ledger_entry e where e.kind = 'run.received' and not exists (select 1 from run r where r.id::text = convert_from(e.bytes, 'UTF8')::jsonb #>> '{subject,runId}')"),
+        ("a run has one ledger entry, and such an entry its run",
+            """
+            with entries as (select convert_from(bytes, 'UTF8')::jsonb #>> '{subject,runId}' as run, count(*) as n from ledger_entry where kind = 'run.received' group by 1)
+            select count(*) from entries e full join run r on r.id::text = e.run where r.id is null or e.n is distinct from 1
+            """),
         ("no file, reading or curve stands alone",
             """
             select (select count(*) from file f where not exists (select 1 from run_file r where r.sha256 = f.sha256))
@@ -37,14 +38,16 @@ internal static class StoreLaws
             "select count(*) from ledger_entry e where (select count(*) from ledger_position p where p.entry_id = e.id) + (select count(*) from ledger_queue q where q.entry_id = e.id) <> 1"),
         ("positions have no gaps",
             "select coalesce(max(position) + 1, 0) - count(*) from ledger_position"),
-        ("a decision's bytes have their digest, and its ledger entry names it",
+        ("a decision's bytes have their digest",
+            "select count(*) from decision where sha256(record) <> sha256"),
+        ("a decision has one ledger entry that names its digest, and such an entry its decision",
             """
-            select count(*) from decision d where sha256(d.record) <> d.sha256 or (
-                select count(*) from ledger_entry e
-                where e.kind = 'lot.decided' and convert_from(e.bytes, 'UTF8')::jsonb #>> '{detail,recordSha256}' = encode(d.sha256, 'hex')) <> 1
+            with entries as (
+                select convert_from(bytes, 'UTF8')::jsonb #>> '{subject,decisionId}' as decision, min(convert_from(bytes, 'UTF8')::jsonb #>> '{detail,recordSha256}') as digest, count(*) as n
+                from ledger_entry where kind = 'lot.decided' group by 1)
+            select count(*) from entries e full join decision d on d.id::text = e.decision
+            where d.id is null or e.n is distinct from 1 or e.digest is distinct from encode(d.sha256, 'hex')
             """),
-        ("a ledger entry of a decision has its decision",
-            "select count(*) from ledger_entry e where e.kind = 'lot.decided' and not exists (select 1 from decision d where d.id::text = convert_from(e.bytes, 'UTF8')::jsonb #>> '{subject,decisionId}')"),
         ("a decision pins the verdicts of both units of its lot",
             "select count(*) from decision d where (select count(*) from decision_verdict v where v.decision_id = d.id and v.verdict_id is not null) <> 2"),
         ("a lot has one decision at most",
