@@ -86,7 +86,13 @@ internal static class RunCircumstances
         var list = new JsonArray();
         foreach (var element in json.EnumerateArray())
         {
-            if ((element.ValueKind == JsonValueKind.Object ? Described(element) : element.ValueKind == JsonValueKind.String ? Plainly(element) : null) is not { } instrument)
+            JsonNode? instrument = element.ValueKind switch
+            {
+                JsonValueKind.Object => Described(element),
+                JsonValueKind.String => Plainly(element),
+                _ => null,
+            };
+            if (instrument is null)
                 return null;
             list.Add(instrument);
         }
