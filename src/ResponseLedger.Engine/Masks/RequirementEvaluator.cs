@@ -42,8 +42,8 @@ internal static class RequirementEvaluator
             return new(requirement.Name, Outcome.Fail, least, output.Unit, leastHz, absent ? result.Reason : null, notes);
         if (Undecided(requirement.Output, result, crossovers, absent, hasPhase) is { } reason)
         {
-            // A crossover on the other side of 0 dB is a crossover: a loop that is beyond the critical point is not accepted for it.
-            bool none = requirement.Output is "gainMarginDb" or "gainReductionDb" ? result.PhaseCrossovers.Count == 0 : true;
+            // A phase crossover above 0 dB is one: a loop that may be beyond the critical point is not accepted for want of others.
+            bool none = requirement.Output != "gainMarginDb" || result.PhaseCrossovers.Count == 0;
             bool accepted = none && reason.Code == AbsenceCode.NoCrossover && requirement.AcceptNoCrossover;
             return new(requirement.Name, accepted ? Outcome.Pass : Outcome.Inconclusive, null, output.Unit, null, reason, notes);
         }
@@ -87,8 +87,8 @@ internal static class RequirementEvaluator
             "gainReductionDb" => "no phase crossover above 0 dB, at which the gain may fall",
             _ => "no phase crossover",
         };
-        string remedy = result.PhaseCrossovers.Count > 0 && !ofGain
-            ? "there are others, which the run's loop margins list"
+        string remedy = result.PhaseCrossovers.Count > 0 && output == "gainMarginDb"
+            ? "those that it holds lie above 0 dB, and the run's loop margins list them"
             : "sweep further, or let the requirement accept it";
         return new Absence(AbsenceCode.NoCrossover, $"The sweep holds {what}; {remedy}.");
     }
