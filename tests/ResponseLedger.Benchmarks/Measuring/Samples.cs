@@ -13,6 +13,8 @@ internal sealed class Samples
 
     public double P95 => Quantile(0.95);
 
+    public double Slowest => Quantile(1);
+
     public void Add(double milliseconds)
     {
         var at = sorted.BinarySearch(milliseconds);

@@ -1,5 +1,4 @@
 using System.Security.Cryptography;
-using System.Text;
 using Npgsql;
 using ResponseLedger.Benchmarks.Lab;
 using ResponseLedger.Engine.Sweeps;
@@ -85,11 +84,9 @@ internal sealed class BareTransaction : IAsyncDisposable
         var sweep = reading.Sweep!;
         var grid = CurveCodec.PackGrid(sweep);
         var sha256 = SHA256.HashData(content);
-        var bytes = (byte[])entry.Clone();
-        Encoding.ASCII.GetBytes(serial).CopyTo(bytes, 0);
         return new Rows(
             content, sha256, RunFilesDigest.Of([sha256]), serial, NewId(), NewId(), NewId(), NewId(), NewId(), sweep, grid, CurveCodec.GridKey(grid),
-            CurveCodec.PackPlanes(sweep), reading.Choices!.ToJson(), System.Text.Json.JsonSerializer.Serialize(reading.Notes), bytes, TimeProvider.System.GetUtcNow());
+            CurveCodec.PackPlanes(sweep), reading.Choices!.ToJson(), System.Text.Json.JsonSerializer.Serialize(reading.Notes), entry, TimeProvider.System.GetUtcNow());
     }
 
     /// <summary>Inserts them: one round trip for the rows, one for the commit.</summary>
