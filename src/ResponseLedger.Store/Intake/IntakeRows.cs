@@ -13,7 +13,7 @@ namespace ResponseLedger.Store.Intake;
 
 /// <summary>
 /// Writes everything that a taken file is: its bytes, grid and unit where they are new, the run, its first assignment, its
-/// first reading with the curve, and the verdict. One round trip.
+/// first reading with the curve, the verdict, and the act's ledger entries. One round trip.
 /// </summary>
 internal static class IntakeRows
 {
@@ -66,6 +66,7 @@ internal static class IntakeRows
         batch.Add(CurveSql, Of(readingId), Of(CurveCodec.PackPlanes(sweep)));
         if (verdict is not null)
             verdict.AddTo(batch, act.NewId(), readingId, act.At);
+        LedgerRows.AddTo(batch, act);
         await batch.PrepareAsync(cancellationToken);
         await batch.ExecuteNonQueryAsync(cancellationToken);
     }

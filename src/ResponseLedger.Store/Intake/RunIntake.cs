@@ -24,12 +24,25 @@ public sealed class RunIntake(
     public async Task<IReadOnlyList<IntakeResult>> TakeAsync(
         Actor actor, IntakeOrder order, IReadOnlyList<IntakeFile> files, CancellationToken cancellationToken)
     {
-        ArgumentNullException.ThrowIfNull(actor);
         ArgumentNullException.ThrowIfNull(order);
-        ArgumentNullException.ThrowIfNull(files);
         CurrentBasis? current;
         await using (var db = await contexts.CreateDbContextAsync(cancellationToken))
             current = await CurrentBases.FindAsync(db, order.ConditionId, cancellationToken);
+        return await TakeAsync(actor, order, current, files, cancellationToken);
+    }
+
+    /// <summary>Takes the files in their order, and tells what became of each.</summary>
+    /// <param name="actor">Who sends them.</param>
+    /// <param name="order">Where they belong.</param>
+    /// <param name="current">The basis in force of the condition as it was just looked up; null where it has no released mask.</param>
+    /// <param name="files">The files.</param>
+    /// <param name="cancellationToken">Stops between files.</param>
+    public async Task<IReadOnlyList<IntakeResult>> TakeAsync(
+        Actor actor, IntakeOrder order, CurrentBasis? current, IReadOnlyList<IntakeFile> files, CancellationToken cancellationToken)
+    {
+        ArgumentNullException.ThrowIfNull(actor);
+        ArgumentNullException.ThrowIfNull(order);
+        ArgumentNullException.ThrowIfNull(files);
 
         // A basis never changes. One that is replaced while the batch runs leaves verdicts that are merely stale.
         var basis = current is null ? null : await material.OfAsync(current.BasisId, cancellationToken);
@@ -87,10 +100,10 @@ public sealed class RunIntake(
             throw Refuse(file, IntakeNotes.SameFileOtherUnit, IntakeNotes.OtherUnitSentence(other));
 
         var runId = act.NewId();
-        await IntakeRows.WriteAsync(act, order, file, content, filesDigest, runId, read.Reading, verdict, cancellationToken);
         if (read.ToRemember is { } choice)
             ColumnMemory.Remember(act, order, choice);
         Record(act, order, file, runId, judged);
+        await IntakeRows.WriteAsync(act, order, file, content, filesDigest, runId, read.Reading, verdict, cancellationToken);
         return new IntakeResult(
             file.Name, file.Serial, IntakeOutcome.Accepted, runId, judged, NotesOf(order, read, found), [], []);
     }

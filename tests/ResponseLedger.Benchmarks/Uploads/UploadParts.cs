@@ -23,7 +23,9 @@ internal static class UploadParts
         var (warmUp, rounds) = (effort.Of(200, 40), effort.Of(500, 60));
         var content = SweepFile.Csv(UploadBenchmark.Points, 77_777);
         var contexts = lab.Services.GetRequiredService<IDbContextFactory<ResponseLedgerContext>>();
-        var current = await FindBasisAsync();
+        CurrentBasis current;
+        await using (var db = await contexts.CreateDbContextAsync())
+            current = (await CurrentBases.FindAsync(db, device.ConditionId, default))!;
         var basis = await lab.Services.GetRequiredService<JudgingMaterial>().OfAsync(current.BasisId, default);
 
         var empty = await HttpAsync(lab.Manager, "/api/measures");
@@ -47,9 +49,8 @@ internal static class UploadParts
             await using var db = await contexts.CreateDbContextAsync();
             await IntakeLookup.FindAsync(db, new PlaceNames(device.Id.ToString(), lotId.ToString(), BenchLab.BenchName, null, null), default);
         });
-        var bases = await Samples.OfAsync(warmUp, rounds, async _ => await FindBasisAsync());
-        var intake = await IntakeAsync(lab, device, lotId, warmUp, rounds);
-        var act = intake.Median - reading.Median - judging.Median - bases.Median;
+        var intake = await IntakeAsync(lab, device, lotId, current, warmUp, rounds);
+        var act = intake.Median - reading.Median - judging.Median;
         var sum = emptyByToken.Median + form.Median + places.Median + intake.Median;
 
         string[] Row(string what, double ms, double p95) => [what, Report.Ms(ms), double.IsNaN(p95) ? "" : Report.Ms(p95), Report.Ratio(ms / whole.Median)];
@@ -59,19 +60,12 @@ internal static class UploadParts
             Row("bench token: the store is asked at every request", emptyByToken.Median - empty.Median, double.NaN),
             Row("multipart body out of memory, with its SHA-256", form.Median, form.P95),
             Row("- of which SHA-256 alone", hashing.Median, hashing.P95),
-            Row("lookup of device, lot, condition, bench", places.Median, places.P95),
-            Row("lookup of the basis in force", bases.Median, bases.P95),
+            Row("lookup of device, lot, condition with its basis, bench", places.Median, places.P95),
             Row("reading the file", reading.Median, reading.P95),
             Row("judging", judging.Median, judging.P95),
             Row("act: locks, checks, rows, ledger entry, commit", act, double.NaN),
             Row("sum of the parts", sum, double.NaN),
             Row("rest: the body's way over the socket, validation, answer", whole.Median - sum, double.NaN));
-
-        async Task<CurrentBasis> FindBasisAsync()
-        {
-            await using var db = await contexts.CreateDbContextAsync();
-            return (await CurrentBases.FindAsync(db, device.ConditionId, default))!;
-        }
 
         async Task<Samples> HttpAsync(HttpClient client, string path)
         {
@@ -87,7 +81,7 @@ internal static class UploadParts
         }
     }
 
-    private static async Task<Samples> IntakeAsync(BenchLab lab, BenchDevice device, Guid lotId, int warmUp, int rounds)
+    private static async Task<Samples> IntakeAsync(BenchLab lab, BenchDevice device, Guid lotId, CurrentBasis current, int warmUp, int rounds)
     {
         var intake = lab.Services.GetRequiredService<RunIntake>();
         var benchId = (await lab.GetAsync(lab.Manager, "/api/benches")).Json.GetProperty("items")[0].GetProperty("id").GetGuid();
@@ -99,7 +93,7 @@ internal static class UploadParts
             var file = IntakeFile.Of("unit.csv", $"parts{i}", SweepFile.Csv(UploadBenchmark.Points, 100_000 + i));
             await lab.SettleAsync();
             var start = Stopwatch.GetTimestamp();
-            var results = await intake.TakeAsync(actor, order, [file], default);
+            var results = await intake.TakeAsync(actor, order, current, [file], default);
             var took = Stopwatch.GetElapsedTime(start).TotalMilliseconds;
             if (results[0].Outcome != IntakeOutcome.Accepted)
                 throw new InvalidOperationException("A file of the benchmark was not taken.");

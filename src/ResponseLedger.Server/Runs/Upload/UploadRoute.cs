@@ -45,11 +45,12 @@ internal sealed class UploadRoute(
         var order = new IntakeOrder(
             place.DeviceId, place.Condition.Id, place.Condition.Name, place.Lot?.Id, place.Lot?.Number, bench.Id, bench.Name, fields.PurposeWord,
             fields.MeasuredAtTime, fields.Circumstances, fields.ColumnChoices, bench.NoiseFloorDb, fields.Acknowledge is not null);
-        return new UploadAnswer(await TakeAsync(user, order, bench, fields.Serial?.Trim(), form.Files, cancellationToken));
+        return new UploadAnswer(await TakeAsync(user, order, place.Condition.Basis, bench, fields.Serial?.Trim(), form.Files, cancellationToken));
     }
 
     private async Task<IReadOnlyList<UploadResult>> TakeAsync(
-        ClaimsPrincipal user, IntakeOrder order, UploadBench bench, string? serial, IReadOnlyList<SpooledFile> files, CancellationToken cancellationToken)
+        ClaimsPrincipal user, IntakeOrder order, CurrentBasis? current, UploadBench bench, string? serial, IReadOnlyList<SpooledFile> files,
+        CancellationToken cancellationToken)
     {
         var results = new IntakeResult?[files.Count];
         var sound = new List<(int At, IntakeFile File)>(files.Count);
@@ -62,7 +63,7 @@ internal sealed class UploadRoute(
                 sound.Add((i, new IntakeFile(file.Name, fileSerial!, file.Sha256, file.BytesAsync)));
         }
 
-        var taken = await intake.TakeAsync(CurrentActor.Of(user), order, [.. sound.Select(s => s.File)], cancellationToken);
+        var taken = await intake.TakeAsync(CurrentActor.Of(user), order, current, [.. sound.Select(s => s.File)], cancellationToken);
         for (var i = 0; i < sound.Count; i++)
             results[sound[i].At] = taken[i];
 
