@@ -15,7 +15,7 @@ internal static class UploadBenchmark
     {
         var device = await BenchDevice.NewAsync(lab);
         var lotId = await device.NewLotAsync(10_000);
-        var warmUp = effort.Of(150, 40);
+        var warmUp = effort.Of(700, 40);
         var rounds = effort.Of(500, 60);
         await device.SendAsync(lab.Bench, lotId, "first", SweepFile.Csv(Points, -1));
         await using var bare = await BareTransaction.OfAsync(lab, device, lotId);
