@@ -48,13 +48,8 @@ internal sealed class UploadRoute(
         var bench = await benches.OfAsync(user, fields.Bench, found.Benches, cancellationToken);
         var order = new IntakeOrder(
             place.DeviceId, place.Condition.Id, place.Condition.Name, place.Lot?.Id, place.Lot?.Number, bench.Id, bench.Name, fields.PurposeWord,
-<<<<<<< HEAD
             fields.MeasuredAtTime, fields.KeptCircumstances, fields.ColumnChoices, bench.NoiseFloorDb, fields.Acknowledge is not null);
-        return new UploadAnswer(await TakeAsync(user, order, bench, fields.Serial?.Trim(), form.Files, cancellationToken));
-=======
-            fields.MeasuredAtTime, fields.Circumstances, fields.ColumnChoices, bench.NoiseFloorDb, fields.Acknowledge is not null);
         return new UploadAnswer(await TakeAsync(user, order, place.Condition.Basis, bench, fields.Serial?.Trim(), form.Files, early, cancellationToken));
->>>>>>> bench
     }
 
     private async Task<IReadOnlyList<UploadResult>> TakeAsync(
