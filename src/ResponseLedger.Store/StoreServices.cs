@@ -19,6 +19,7 @@ public static class StoreServices
     private static readonly TimeSpan LongestRetryDelay = TimeSpan.FromSeconds(1);
 
     private const int MostPrepared = 200;
+    private const int BufferBytes = 64 << 10;
 
     private const string MigrationsAssembly = "ResponseLedger.Migrations";
 
@@ -65,6 +66,12 @@ public static class StoreServices
         // that goes back to the pool needs no cleaning before its next statement.
         if (!builder.ShouldSerialize("No Reset On Close"))
             builder.NoResetOnClose = true;
+
+        // A file with its curve is some 100 KiB, the curves of a lot a few MiB: few large pieces instead of many small ones.
+        if (!builder.ShouldSerialize("Read Buffer Size"))
+            builder.ReadBufferSize = BufferBytes;
+        if (!builder.ShouldSerialize("Write Buffer Size"))
+            builder.WriteBufferSize = BufferBytes;
 
         // A peer that vanished without a word is found out within a minute.
         if (!builder.ShouldSerialize("Keepalive"))

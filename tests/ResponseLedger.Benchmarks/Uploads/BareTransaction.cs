@@ -1,4 +1,5 @@
 using System.Security.Cryptography;
+using Microsoft.Extensions.DependencyInjection;
 using Npgsql;
 using ResponseLedger.Benchmarks.Lab;
 using ResponseLedger.Engine.Sweeps;
@@ -10,9 +11,9 @@ namespace ResponseLedger.Benchmarks.Uploads;
 
 /// <summary>
 /// The yardstick of an upload: one transaction of one prepared batch that inserts the rows which an upload leaves, and nothing
-/// else. No request, no parsing, no judging, no question before it; the values are made beforehand.
+/// else, on the server's own connections. No request, no parsing, no judging, no question before it; the values are made beforehand.
 /// </summary>
-internal sealed class BareTransaction : IAsyncDisposable
+internal sealed class BareTransaction
 {
     private const string FileSql = "insert into file (sha256, content, at) values ($1, $2, $3) on conflict do nothing";
     private const string GridSql = "insert into grid (sha256, points, planes) values ($1, $2, $3) on conflict do nothing";
@@ -64,7 +65,7 @@ internal sealed class BareTransaction : IAsyncDisposable
     /// <summary>Prepares for a device to which at least one upload was sent: it takes that one's ledger entry for its size.</summary>
     public static async Task<BareTransaction> OfAsync(BenchLab lab, BenchDevice device, Guid lotId)
     {
-        var source = NpgsqlDataSource.Create(lab.Store.ServerConnectionString);
+        var source = lab.Services.GetRequiredService<NpgsqlDataSource>();
         await using var ask = source.CreateCommand(
             """
             select (select bench_id from run where device_id = $1 limit 1), (select id from basis where condition_id = $2 order by at desc limit 1),
@@ -110,8 +111,6 @@ internal sealed class BareTransaction : IAsyncDisposable
         await batch.ExecuteNonQueryAsync();
         await transaction.CommitAsync();
     }
-
-    public ValueTask DisposeAsync() => source.DisposeAsync();
 
     private static double?[] Margins => [0.1, 0.2, 0.3, 0.4, 0.5, 0.6];
 

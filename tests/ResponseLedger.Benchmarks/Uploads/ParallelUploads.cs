@@ -34,7 +34,7 @@ internal static class ParallelUploads
         var device = await BenchDevice.NewAsync(lab);
         var warm = await device.NewLotAsync(10_000);
         await SendAllAsync(lab, device, warm, effort.Of(20, 4), shared: false, seed: 500_000);
-        await using var bare = await BareTransaction.OfAsync(lab, device, warm);
+        var bare = await BareTransaction.OfAsync(lab, device, warm);
         await InsertAllAsync(lab, bare, effort.Of(20, 4), "warm");
 
         var own = await device.NewLotAsync(10_000);

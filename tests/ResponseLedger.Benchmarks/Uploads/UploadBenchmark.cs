@@ -18,7 +18,7 @@ internal static class UploadBenchmark
         var warmUp = effort.Of(700, 40);
         var rounds = effort.Of(500, 60);
         await device.SendAsync(lab.Bench, lotId, "first", SweepFile.Csv(Points, -1));
-        await using var bare = await BareTransaction.OfAsync(lab, device, lotId);
+        var bare = await BareTransaction.OfAsync(lab, device, lotId);
 
         var (byToken, byTokenClient) = (new Samples(), new Samples());
         var (byCookie, byCookieClient) = (new Samples(), new Samples());
