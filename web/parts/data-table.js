@@ -5,7 +5,8 @@
 //
 // A row with an address is followed by its link, which is the row's head cell, or by a click anywhere on the row that hits
 // no other control; instead of .href, .pickable gives the head cell a button and tells "pick" with the row. "cards" turns
-// rows into cards on a narrow screen.
+// rows into cards on a narrow screen. What the page's templates in .empty and in cells listen to is called with the table
+// as "this": give arrow functions there.
 
 import { repeat } from 'lit/directives/repeat.js';
 import { Element, html, nothing } from './element.js';
