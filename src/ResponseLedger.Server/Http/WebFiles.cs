@@ -1,3 +1,4 @@
+using Microsoft.AspNetCore.ResponseCompression;
 using Microsoft.AspNetCore.StaticFiles;
 using Microsoft.Extensions.FileProviders;
 using Microsoft.Extensions.Options;
@@ -20,6 +21,19 @@ internal sealed class WebFiles
             var options = new StaticFileOptions { FileProvider = new PhysicalFileProvider(web.Folder), OnPrepareResponse = Cache };
             files = new StaticFileMiddleware(NotFound, environment, Options.Create(options), loggers);
         }
+    }
+
+    /// <summary>Whether the request is for one of the pages' files or for the shell: what holds no secret and may be compressed. An answer of the API never is, for its length would tell of what it holds.</summary>
+    public static bool AreAskedFor(HttpContext context)
+        => !context.Request.Path.StartsWithSegments("/api") && !context.Request.Path.StartsWithSegments("/openapi") && !context.Request.Path.StartsWithSegments("/health");
+
+    /// <summary>Sets what is compressed and how.</summary>
+    public static void Compress(ResponseCompressionOptions options)
+    {
+        options.EnableForHttps = true;
+        options.MimeTypes = ["text/html", "text/css", "text/javascript", "image/svg+xml", "application/json"];
+        options.Providers.Add<BrotliCompressionProvider>();
+        options.Providers.Add<GzipCompressionProvider>();
     }
 
     public Task InvokeAsync(HttpContext context)

@@ -12,9 +12,11 @@ internal sealed class WebRoot
 
     public WebRoot()
     {
-        var source = InSource();
+        // A published server has the pages beside it, wherever its folder lies; a link there leads to somebody's source.
+        var beside = new DirectoryInfo(Path.Combine(AppContext.BaseDirectory, "web"));
+        var source = beside.Exists ? beside.ResolveLinkTarget(returnFinalTarget: true)?.FullName : InSource();
         fromSource = source is not null;
-        Folder = source ?? Path.Combine(AppContext.BaseDirectory, "web");
+        Folder = source ?? beside.FullName;
     }
 
     /// <summary>The folder that holds index.html.</summary>
@@ -73,7 +75,7 @@ internal sealed class WebRoot
         }
 
         return $"default-src 'none'; script-src 'self'{hash}; style-src 'self'; img-src 'self' data:; connect-src 'self'; form-action 'self'; "
-            + "base-uri 'none'; object-src 'none'; frame-ancestors 'none'; require-trusted-types-for 'script'; trusted-types lit-html";
+            + "base-uri 'none'; object-src 'none'; frame-ancestors 'none'; require-trusted-types-for 'script'; trusted-types lit-html responseledger";
     }
 
     private static string? InSource()

@@ -1,6 +1,8 @@
+using System.IO.Compression;
 using System.Net.Sockets;
 using FluentValidation;
 using Microsoft.AspNetCore.Http.Features;
+using Microsoft.AspNetCore.ResponseCompression;
 using Microsoft.Extensions.DependencyInjection.Extensions;
 using ResponseLedger.Server.Benches;
 using ResponseLedger.Server.Devices;
@@ -61,7 +63,9 @@ internal sealed class House : IAsyncDisposable
         app.UseMiddleware<SecurityHeaders>();
         app.UseExceptionHandler();
         app.UseStatusCodePages(EmptyAnswers.FillAsync);
+        app.UseWhen(WebFiles.AreAskedFor, files => files.UseResponseCompression());
         app.UseMiddleware<WebFiles>();
+        app.UseMiddleware<ShellAddresses>();
         app.UseRouting();
         app.UseMiddleware<RequestGuard>();
         app.UseMiddleware<WaitUntilReady>();
@@ -126,6 +130,9 @@ internal sealed class House : IAsyncDisposable
         services.AddProblemDetails();
         services.AddExceptionHandler<RefusalMapping>();
         services.AddSingleton<WebRoot>();
+        services.AddResponseCompression(WebFiles.Compress);
+        services.Configure<BrotliCompressionProviderOptions>(options => options.Level = CompressionLevel.Optimal);
+        services.Configure<GzipCompressionProviderOptions>(options => options.Level = CompressionLevel.Optimal);
         Description.Add(services);
         foreach (var found in AssemblyScanner.FindValidatorsInAssembly(typeof(House).Assembly, includeInternalTypes: true))
             services.AddSingleton(found.InterfaceType, found.ValidatorType);

@@ -1,0 +1,2 @@
+export*from"lit-html/directives/class-map.js";
+//# sourceMappingURL=class-map.js.map

@@ -1,0 +1,2 @@
+export*from"lit-html/directives/guard.js";
+//# sourceMappingURL=guard.js.map

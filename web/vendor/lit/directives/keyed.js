@@ -1,0 +1,2 @@
+export*from"lit-html/directives/keyed.js";
+//# sourceMappingURL=keyed.js.map

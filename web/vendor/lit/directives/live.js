@@ -1,0 +1,2 @@
+export*from"lit-html/directives/live.js";
+//# sourceMappingURL=live.js.map

@@ -1,0 +1,2 @@
+export*from"lit-html/directives/ref.js";
+//# sourceMappingURL=ref.js.map
