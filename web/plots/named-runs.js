@@ -1,13 +1,14 @@
 // Which runs get a line, a colour and a name of their own; the rest lie in the background. Pure.
 
 /** @typedef {{runId: string, serial: string, outcome: string | null}} Run */
-/** How a run is drawn: an index into the theme's colours, and a dash pattern in CSS pixels. @typedef {{colour: number, dash: number[]}} LineStyle */
+/** How a run is drawn: an index into the theme's series colours, and a dash pattern in CSS pixels. @typedef {{colour: number, dash: number[]}} LineStyle */
 /** @typedef {{run: Run, style: LineStyle}} NamedRun */
 
 /** More lines than these cannot be told apart. */
 export const mostNamed = 8;
 
-export const colourCount = 4;
+/** The colours of a theme for series. The first is that of trouble: in a large lot the named runs are those that do not pass. */
+export const seriesColours = ['--series-2', '--series-1', '--series-4', '--series-3', '--series-6', '--series-5'];
 
 const dashes = [[], [7, 3], [2, 3], [10, 3, 2, 3], [14, 4]];
 
@@ -47,7 +48,7 @@ function chooseRuns(runs, chosen) {
 
 /** No two of the first twenty look the same, and neighbours differ in colour and in dash. @param {number} index @returns {LineStyle} */
 export function styleOf(index) {
-  return { colour: index % colourCount, dash: dashes[index % dashes.length] };
+  return { colour: index % seriesColours.length, dash: dashes[index % dashes.length] };
 }
 
 /**

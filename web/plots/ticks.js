@@ -1,9 +1,10 @@
 // Ticks of a plot's axes and their texts. Pure.
 
+import { significant, withPrefix } from '../numbers.js';
+
 /** @typedef {{value: number, major: boolean, text: string}} Tick */
 
-const prefixes = new Map([[-12, 'p'], [-9, 'n'], [-6, 'µ'], [-3, 'm'], [0, ''], [3, 'k'], [6, 'M'], [9, 'G'], [12, 'T']]);
-const gap = '\u202f';
+const digits = 9;
 const textWidthPx = 34;
 
 /**
@@ -63,18 +64,7 @@ function stepFor(least, angle) {
 }
 
 /** @param {number} value */
-function plain(value) {
-  return withMinus(String(value));
-}
+const plain = (value) => significant(value, digits);
 
-/** A value with its SI prefix: "20 k", "1.5 M", "50". @param {number} value */
-export function prefixed(value) {
-  if (value === 0) return '0';
-  const power = Math.min(12, Math.max(-12, 3 * Math.floor(Math.log10(Math.abs(value)) / 3 + 1e-12)));
-  const mantissa = Number((value / 10 ** power).toPrecision(9));
-  const prefix = prefixes.get(power) ?? '';
-  return withMinus(String(mantissa)) + (prefix === '' ? '' : gap + prefix);
-}
-
-/** @param {string} text */
-const withMinus = (text) => text.replace('-', '\u2212');
+/** A value with its SI prefix and no unit, which the axis names: "20 k", "1.5 M", "50". @param {number} value */
+export const prefixed = (value) => withPrefix(value, '', digits).trimEnd();
