@@ -21,7 +21,7 @@ export function percentileOf(ascending, count, percent) {
 /**
  * Percentile curves at frequencies from..to-1 of runs on one grid. Absent values are left out; where fewer than
  * `fewest` runs have a value there is no percentile.
- * @param {Float64Array[]} curves
+ * @param {(Float64Array | Float32Array)[]} curves
  * @param {number[]} percents
  * @param {{from: number, to: number, fewest?: number}} range
  * @returns {Float64Array[]} a curve a percentile, `to - from` long

@@ -45,6 +45,19 @@ export function moved(axis, span, share) {
 }
 
 /**
+ * The span in which what lay at two places now lies at two others, as two fingers carry it. Where the fingers are, or were,
+ * together it is only moved.
+ * @param {Axis} axis @param {Span} span @param {[number, number]} before @param {[number, number]} now
+ * @returns {Span}
+ */
+export function carried(axis, span, before, now) {
+  const [was, is] = [before[1] - before[0], now[1] - now[0]];
+  const factor = Math.abs(was) < 0.02 || Math.abs(is) < 0.02 ? 1 : was / is;
+  const from = (before[0] + before[1]) / 2 - (factor * (now[0] + now[1])) / 2;
+  return { min: valueAtPlace(axis, span, from), max: valueAtPlace(axis, span, from + factor) };
+}
+
+/**
  * The part of a span between two places, in either order.
  * @param {Axis} axis @param {Span} span @param {number} a @param {number} b
  * @returns {Span}

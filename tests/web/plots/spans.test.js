@@ -1,6 +1,6 @@
 import assert from 'node:assert/strict';
 import { test } from 'node:test';
-import { between, logAxis, moved, placeOf, straightAxis, valueAtPlace, within, zoomed } from '../../../web/plots/spans.js';
+import { between, carried, logAxis, moved, placeOf, straightAxis, valueAtPlace, within, zoomed } from '../../../web/plots/spans.js';
 
 const audio = { min: 20, max: 20_000 };
 const near = (actual, expected, tolerance = 1e-9) => assert.ok(Math.abs(actual - expected) <= tolerance * Math.max(1, Math.abs(expected)), `${actual} is not ${expected}`);
@@ -52,4 +52,19 @@ test('a span longer than its bounds is the bounds', () => assert.deepEqual(withi
 test('a span is never shorter than the least share', () => {
   const span = within(logAxis, { min: 1000, max: 1000 }, audio, 0.01);
   near(placeOf(logAxis, audio, span.max) - placeOf(logAxis, audio, span.min), 0.01);
+});
+
+test('two fingers carry what is under them along', () => {
+  for (const axis of [logAxis, straightAxis]) {
+    const values = [0.3, 0.6].map((place) => valueAtPlace(axis, audio, place));
+    const span = carried(axis, audio, [0.3, 0.6], [0.1, 0.9]);
+    near(placeOf(axis, span, values[0]), 0.1);
+    near(placeOf(axis, span, values[1]), 0.9);
+  }
+});
+
+test('fingers one above the other move a span and do not tear it', () => {
+  const span = carried(straightAxis, { min: 0, max: 10 }, [0.5, 0.5], [0.6, 0.6]);
+  near(span.min, -1);
+  near(span.max, 9);
 });
