@@ -4,10 +4,13 @@ using ResponseLedger.Engine.Measures;
 namespace ResponseLedger.Records.Verdicts;
 
 /// <summary>Name and unit of a mask's criterion by its place in verdicts: limits first, then requirements.</summary>
-internal static class CriterionNames
+public static class CriterionNames
 {
+    /// <summary>Name and unit (dB, deg, s, Hz, dB/decade or 1) of a criterion.</summary>
+    /// <exception cref="ArgumentException">The requirement names a measure or an output that is not known.</exception>
     public static (string Name, string Unit) At(Mask mask, int index)
     {
+        ArgumentNullException.ThrowIfNull(mask);
         if (index < mask.Limits.Count)
         {
             var limit = mask.Limits[index];

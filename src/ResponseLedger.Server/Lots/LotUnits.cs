@@ -83,8 +83,8 @@ internal static class LotUnits
         return new UnitKey(RankOf(unit.Outcome), double.IsFinite(severity) ? severity : null, unit.Serial);
     }
 
-    // Fail, inconclusive, not yet judged, and then by what the verdict says.
-    private static int RankOf(Outcome? outcome) => outcome switch
+    /// <summary>Fail, inconclusive, not yet judged, and then by what the verdict says.</summary>
+    public static int RankOf(Outcome? outcome) => outcome switch
     {
         Outcome.Fail => 0,
         Outcome.Inconclusive => 1,
@@ -99,9 +99,14 @@ internal static class LotUnits
     {
         if (run is not { BasisId: { } basis, Verdict: { WorstIndex: { } worst } verdict } || verdict.Margins[worst] is not { } margin)
             return double.NegativeInfinity;
-        var mask = masks[basis].Mask;
-        var scale = worst < mask.Limits.Count ? mask.Limits[worst].Scale : mask.Requirements[worst - mask.Limits.Count].Scale;
-        return margin / (scale ?? 1);
+        return margin / ScaleOf(masks[basis], worst);
+    }
+
+    /// <summary>By what a criterion's margin is divided to compare it with others.</summary>
+    public static double ScaleOf(MaskDocument document, int criterion)
+    {
+        var mask = document.Mask;
+        return (criterion < mask.Limits.Count ? mask.Limits[criterion].Scale : mask.Requirements[criterion - mask.Limits.Count].Scale) ?? 1;
     }
 
     /// <summary>Where a unit stands in the list; no severity comes before any.</summary>

@@ -1,4 +1,5 @@
 using ResponseLedger.Engine.Masks;
+using ResponseLedger.Records.Masks;
 using ResponseLedger.Store.Queries;
 
 namespace ResponseLedger.Server.Lots;
@@ -20,6 +21,9 @@ namespace ResponseLedger.Server.Lots;
 /// <param name="Blockers">What stands against a plain approval now.</param>
 /// <param name="Decision">The decision in force, or null while the lot is open.</param>
 /// <param name="CreatedAt">When the lot was opened.</param>
+/// <param name="FirstPass">What it came to at the first try, whatever was invalidated since.</param>
+/// <param name="Worst">The worst criterion of its worst unit, or null while nothing is judged.</param>
+/// <param name="LastRunAt">When its last production run was received, or null.</param>
 internal sealed record LotView(
     Guid Id,
     Guid DeviceId,
@@ -36,9 +40,12 @@ internal sealed record LotView(
     int Stale,
     IReadOnlyList<Blocker> Blockers,
     LotDecisionView? Decision,
-    DateTimeOffset CreatedAt)
+    DateTimeOffset CreatedAt,
+    FirstPassView FirstPass,
+    LotWorstView? Worst,
+    DateTimeOffset? LastRunAt)
 {
-    public static LotView Of(LotHead lot)
+    public static LotView Of(LotHead lot, IReadOnlyDictionary<Guid, MaskDocument> masks)
     {
         var first = lot.Conditions.Count > 0 ? lot.Conditions[0] : null;
         return new LotView(
@@ -57,9 +64,18 @@ internal sealed record LotView(
             lot.Tally.Stale,
             ApprovalBlockers.Of(lot),
             lot.Decision is { } decision ? LotDecisionView.Of(decision) : null,
-            lot.CreatedAt);
+            lot.CreatedAt,
+            new FirstPassView(lot.FirstPass.Tested, lot.FirstPass.Passed),
+            LotWorst.Of(lot, masks),
+            lot.LastRunAt);
     }
 }
+
+/// <summary>Units with a run in every condition, and those whose first run passes in every condition.</summary>
+internal sealed record FirstPassView(int Tested, int Passed);
+
+/// <summary>The worst criterion of the worst unit of a lot.</summary>
+internal sealed record LotWorstView(string Serial, Guid RunId, string Criterion, Outcome Outcome, double? FrequencyHz, double? Margin, string Unit);
 
 /// <summary>How many units of a lot stand how. A unit is counted by its outcome, and once more where it is withdrawn or conceded.</summary>
 internal sealed record LotCountsView(int Units, int Tested, int Passed, int Failed, int Inconclusive, int Withdrawn, int Retests, int Conceded)

@@ -16,7 +16,7 @@ internal static class LotsRoutes
 
         lots.MapGet("", ReadLots.ListAsync)
             .WithName("listLots")
-            .WithSummary("Lots, newest first. `state` is open, approved, approvedWithConcession or rejected; `device` an id, a part number or PART/REV; `search` looks in lot numbers and part numbers, and for a whole serial number.")
+            .WithSummary("Lots, newest first. `state` is open, approved, approvedWithConcession or rejected, or decided for any of the last three; `device` an id, a part number or PART/REV; `search` looks in lot numbers and part numbers, and for a whole serial number.")
             .ProducesValidationProblem(StatusCodes.Status422UnprocessableEntity);
         lots.MapPost("", WriteLots.CreateAsync).Validated<NewLot>().RequireAuthorization(Policies.Operate)
             .WithName("createLot").WithSummary("Opens a lot; the serial numbers of its units may be declared.")

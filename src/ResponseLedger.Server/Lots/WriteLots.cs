@@ -2,6 +2,7 @@ using System.Security.Claims;
 using System.Text.Json.Nodes;
 using Microsoft.AspNetCore.Http.HttpResults;
 using Microsoft.EntityFrameworkCore;
+using ResponseLedger.Records.Masks;
 using ResponseLedger.Server.Devices;
 using ResponseLedger.Server.Http;
 using ResponseLedger.Server.People;
@@ -40,7 +41,9 @@ internal static class WriteLots
                 await DeclareAsync(act, lot, serials, token);
             return lot.Id;
         }, cancellationToken);
-        return TypedResults.Created($"/api/lots/{id}", LotView.Of(await ReadLots.FindAsync(db, id, cancellationToken)));
+
+        // A lot that was opened just now has no verdicts, and so no masks to read them by.
+        return TypedResults.Created($"/api/lots/{id}", LotView.Of(await ReadLots.FindAsync(db, id, cancellationToken), new Dictionary<Guid, MaskDocument>()));
     }
 
     // A serial number that the device knows already keeps its unit; the second statement sees what somebody else added at the same time.

@@ -15,6 +15,9 @@ namespace ResponseLedger.Store.Queries;
 /// <param name="Conditions">The device's conditions in their order; of a decided lot those that were pinned.</param>
 /// <param name="Tally">The counts.</param>
 /// <param name="NeedsTwoSigners">Whether the device asks for two signers.</param>
+/// <param name="FirstPass">What it came to at the first try.</param>
+/// <param name="Worst">The least margin of each criterion that was the worst of a counting run; the scales of the mask tell which is the lot's worst.</param>
+/// <param name="LastRunAt">When its last production run was received; null while it has none.</param>
 public sealed record LotHead(
     Guid Id,
     Guid DeviceId,
@@ -27,7 +30,20 @@ public sealed record LotHead(
     DecisionHead? Decision,
     IReadOnlyList<LotCondition> Conditions,
     LotTally Tally,
-    bool NeedsTwoSigners);
+    bool NeedsTwoSigners,
+    FirstPass FirstPass,
+    IReadOnlyList<LotMargin> Worst,
+    DateTimeOffset? LastRunAt);
+
+/// <summary>The least margin of a lot in one criterion of a mask, among the runs for which that criterion is the worst.</summary>
+/// <param name="BasisId">What the runs are judged by.</param>
+/// <param name="Outcome">Their outcome, as the number of <see cref="Engine.Masks.Outcome"/>.</param>
+/// <param name="WorstIndex">The criterion.</param>
+/// <param name="Margin">Its least margin, or null.</param>
+/// <param name="FrequencyHz">Where it lies, or null.</param>
+/// <param name="Serial">The unit.</param>
+/// <param name="RunId">The run.</param>
+public sealed record LotMargin(Guid BasisId, short Outcome, int WorstIndex, double? Margin, double? FrequencyHz, string Serial, Guid RunId);
 
 /// <summary>A decision without its record.</summary>
 public sealed record DecisionHead(

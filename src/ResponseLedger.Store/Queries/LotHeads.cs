@@ -6,7 +6,7 @@ using ResponseLedger.Records.Verdicts;
 namespace ResponseLedger.Store.Queries;
 
 /// <summary>Which lots a list is asked for.</summary>
-/// <param name="State"><c>open</c>, <c>approved</c>, <c>approvedWithConcession</c>, <c>rejected</c>, or null for all.</param>
+/// <param name="State"><c>open</c>, <c>approved</c>, <c>approvedWithConcession</c>, <c>rejected</c>, <c>decided</c> for the last three, or null for all.</param>
 /// <param name="Device">Id, part number or PART/REV of the device, or null.</param>
 /// <param name="Search">Part of a lot's number or part number in any case, or a unit's whole serial number; or null.</param>
 /// <param name="BeforeId">The last lot of the page before, or null for the first page.</param>
@@ -16,8 +16,19 @@ public sealed record LotFilter(string? State, string? Device, string? Search, Gu
 /// <summary>Lots as lists show them: each page is one statement, and costs the same however many runs the store holds.</summary>
 public static class LotHeads
 {
-    private const string Columns =
+    private const string Columns = FirstPass.Chain +
         """
+        , least as (
+            select distinct on (lot_id, basis_id, outcome, worst_index)
+                   lot_id, basis_id, outcome, worst_index, margins[worst_index + 1] as margin, frequencies_hz[worst_index + 1] as frequency_hz, unit_id, run_id
+            from counting where verdict_id is not null and worst_index is not null
+            order by lot_id, basis_id, outcome, worst_index, margins[worst_index + 1] nulls first
+        ),
+        worst as (
+            select least.lot_id, json_agg(json_build_object('BasisId', basis_id, 'Outcome', outcome, 'WorstIndex', worst_index, 'Margin', margin,
+                   'FrequencyHz', frequency_hz, 'Serial', u.serial, 'RunId', run_id)) as margins
+            from least join unit u on u.id = least.unit_id group by least.lot_id
+        )
         select c.id, c.device_id, c.part_number, c.revision, s.title, c.number, c.size, c.at,
                c.decision_id, c.decision_ordinal, c.decision_kind, c.decision_reason, c.decision_at, c.decision_sha256,
                (c.record -> 'signer' ->> 'personId')::uuid, c.record -> 'signer' ->> 'name', c.record -> 'signer' ->> 'email', c.record ->> 'meaning',
@@ -25,7 +36,8 @@ public static class LotHeads
                        'GoldenRunId', q.golden_run_id, 'GoldenReadingId', q.golden_reading_id) order by q.ordinal)
                 from required q where q.lot_id = c.id),
                t.units::int, t.tested::int, t.passed::int, t.failed::int, t.inconclusive::int, t.withdrawn::int, t.retests::int,
-               t.cleared::int, t.conceded::int, t.stale::int, s.signing_needs_two
+               t.cleared::int, t.conceded::int, t.stale::int, s.signing_needs_two,
+               coalesce(f.tested, 0), coalesce(f.passed, 0), w.margins, r.last_at
         from chosen c
         join lateral (select title, signing_needs_two from device_setting where device_id = c.device_id order by number desc limit 1) s on true
         left join (
@@ -35,6 +47,9 @@ public static class LotHeads
                    count(*) filter (where passes or withdrawn) as cleared, count(*) filter (where disposition = 'concession') as conceded,
                    sum(stale) as stale
             from standing group by lot_id) t on t.lot_id = c.id
+        left join first_pass f on f.lot_id = c.id
+        left join worst w on w.lot_id = c.id
+        left join (select lot_id, max(at) as last_at from ordered group by lot_id) r on r.lot_id = c.id
         order by c.id desc
         """;
 
@@ -46,7 +61,7 @@ public static class LotHeads
          where true
              {(filter.BeforeId is null ? "" : "and l.id < @before")}
              {(filter.Device is null ? "" : "and l.device_id in (select id from device where id::text = lower(@device) or part_number = @device or part_number || '/' || revision = @device)")}
-             {(filter.State is null ? "" : filter.State == "open" ? "and decided.id is null" : "and decided.kind = @kind")}
+             {(filter.State is null ? "" : filter.State == LotStates.Open ? "and decided.id is null" : filter.State == LotStates.Decided ? "and decided.id is not null" : "and decided.kind = @kind")}
              {(filter.Search is null ? "" : """
               and (position(lower(@search) in lower(l.number)) > 0 or position(lower(@search) in lower(dev.part_number)) > 0
                    or l.id in (select d.lot_id from lot_unit d join unit u on u.id = d.unit_id where u.serial = @search)
@@ -82,7 +97,7 @@ public static class LotHeads
                 parameters.AddWithValue("limit", filter.Limit + 1);
                 AddText(parameters, "device", filter.Device);
                 AddText(parameters, "search", filter.Search);
-                AddText(parameters, "kind", filter.State is { } state and not "open" ? LotStates.KindOf(state) : null);
+                AddText(parameters, "kind", filter.State is { } state and not (LotStates.Open or LotStates.Decided) ? LotStates.KindOf(state) : null);
                 if (filter.BeforeId is { } before)
                     parameters.AddWithValue("before", before);
             },
@@ -128,5 +143,8 @@ public static class LotHeads
             : new LotTally(
                 row.GetInt32(19), row.GetInt32(20), row.GetInt32(21), row.GetInt32(22), row.GetInt32(23), row.GetInt32(24),
                 row.GetInt32(25), row.GetInt32(26), row.GetInt32(27), row.GetInt32(28)),
-        row.GetBoolean(29));
+        row.GetBoolean(29),
+        new FirstPass(row.GetInt32(30), row.GetInt32(31)),
+        row.IsDBNull(32) ? [] : JsonSerializer.Deserialize<LotMargin[]>(row.GetString(32))!,
+        row.IsDBNull(33) ? null : row.GetFieldValue<DateTimeOffset>(33));
 }

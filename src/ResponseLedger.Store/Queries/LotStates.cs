@@ -6,6 +6,9 @@ public static class LotStates
     /// <summary>No decision is in force.</summary>
     public const string Open = "open";
 
+    /// <summary>No state of a lot, but the word by which a list is asked for all lots with a decision in force.</summary>
+    public const string Decided = "decided";
+
     /// <summary>All states.</summary>
     public static IReadOnlyList<string> All { get; } = [Open, "approved", "approvedWithConcession", "rejected"];
 
