@@ -5,7 +5,6 @@ import { curvesOf, drawPercentiles, drawRuns } from './run-drawing.js';
 /** @typedef {import('./run-drawing.js').Curves} Curves */
 /** @typedef {import('./run-drawing.js').PictureRequest} PictureRequest */
 /** What drawImage takes. @typedef {ImageBitmap | HTMLCanvasElement} Picture */
-/** @typedef {{onmessage: ((event: MessageEvent) => void) | null, postMessage: (message: unknown, transfer?: Transferable[]) => void}} WorkerScope */
 
 const longestSliceMs = 8;
 
@@ -120,7 +119,7 @@ export function sharedPainter() {
 function startWorker() {
   if (typeof Worker === 'undefined' || typeof OffscreenCanvas === 'undefined') return null;
   try {
-    const address = new URL('./run-worker.js', import.meta.url).href;
+    const address = new URL('./run.worker.js', import.meta.url).href;
     return new Worker(trusted(address), { type: 'module' });
   } catch {
     return null;

@@ -11,7 +11,7 @@ import { drawPercentiles, drawRuns, finish } from './run-drawing.js';
 
 /** @type {Map<number, Curves>} */
 const kept = new Map();
-const scope = /** @type {import('./run-painter.js').WorkerScope} */ (/** @type {unknown} */ (self));
+const scope = /** @type {DedicatedWorkerGlobalScope} */ (/** @type {unknown} */ (self));
 
 scope.onmessage = ({ data }) => {
   const order = /** @type {Order} */ (data);
