@@ -36,6 +36,7 @@ export function miniPath(frequencyHz, values, { width, height, columns = 2 * wid
   const middle = (min + max) / 2;
   const length = Math.max(leastLength, max - min);
   const span = { min: middle - length / 2, max: middle + length / 2 };
+  /** @type {string[]} */
   const parts = [];
   let pen = 'M';
   const point = (/** @type {number} */ i) => {
