@@ -55,3 +55,18 @@ need_postgres() {
     return 1
   fi
 }
+
+# For the checks of the pages alone; the server needs no Node.js.
+need_node() {
+  local major
+  major=$(node --version 2>/dev/null | sed 's/^v\([0-9]*\).*/\1/')
+  if [ "${major:-0}" -ge 18 ] && command -v npm >/dev/null 2>&1; then
+    return 0
+  fi
+  apt_install nodejs npm || true
+  major=$(node --version 2>/dev/null | sed 's/^v\([0-9]*\).*/\1/')
+  if [ "${major:-0}" -lt 18 ] || ! command -v npm >/dev/null 2>&1; then
+    say "Node.js 18 or newer with npm is missing: the checks of the pages need it. Install it, for example 'apt-get install nodejs npm'." >&2
+    return 1
+  fi
+}

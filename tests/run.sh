@@ -3,7 +3,7 @@
 #
 #   tests/run.sh                    everything; what needs a container engine is skipped where there is none
 #   tests/run.sh --all              as CI runs it: what is missing is installed, and nothing may be skipped
-#   tests/run.sh Engine.Tests ...   only these test projects
+#   tests/run.sh Engine.Tests ...   only these test projects; "web" is the pages
 set -uo pipefail
 root=$(cd "$(dirname "${BASH_SOURCE[0]}")/.." && pwd)
 cd "$root"
@@ -88,12 +88,46 @@ finish() {
   exit
 }
 
+run_node_tests() { # counts every test of tests/web
+  local log=$results/web.log before=$failed ok bad left
+  # The files are named one by one: what Node.js makes of a folder differs between its versions.
+  (cd tests/web && find . -name node_modules -prune -o -name '*.test.js' -print0 | sort -z | xargs -0 node --test --test-reporter=tap) >"$log" 2>&1
+  ok=$(sed -n 's/^# pass \([0-9]*\)$/\1/p' "$log" | tail -n 1)
+  bad=$(sed -n 's/^# fail \([0-9]*\)$/\1/p' "$log" | tail -n 1)
+  left=$(sed -n -E 's/^# (skipped|todo|cancelled) ([0-9]*)$/\2/p' "$log" | paste -sd+ | sed 's/^$/0/')
+  passed=$((passed + ${ok:-0}))
+  failed=$((failed + ${bad:-0}))
+  skipped=$((skipped + left))
+  if [ "${ok:-0}" -eq 0 ] || [ -z "$bad" ]; then
+    failed=$((failed + 1))
+  fi
+  if [ "$failed" -gt "$before" ]; then
+    say "FAILED  web"
+    grep -vE '^ +(---|\.\.\.|duration_ms|type:)' "$log" | tail -n 120
+  else
+    say "ok      web, ${ok} tests"
+  fi
+}
+
+check_web() {
+  check "packages of tests/web" npm --prefix tests/web ci --no-fund --no-audit
+  run_node_tests
+  check "types of the pages" npm --prefix tests/web run --silent types
+  check "vendored copies are those of their packages" npm --prefix tests/web run --silent vendor:check
+}
+
+if [ ${#only[@]} -eq 0 ] || wanted web; then
+  if need_node; then check_web; else failed=$((failed + 1)); fi
+  [ "${only[*]}" = web ] && finish
+fi
+
 need_dotnet && need_postgres || { failed=1; finish; }
 
 say "Restoring and building."
+before_build=$failed
 check "restore from the lock files" dotnet restore --locked-mode
 check "build without a warning" dotnet build --no-restore -c Release -v quiet
-[ "$failed" -eq 0 ] || finish
+[ "$failed" -eq "$before_build" ] || finish
 
 if [ ${#only[@]} -eq 0 ]; then
   check "formatted as .editorconfig says" dotnet format --no-restore --verify-no-changes

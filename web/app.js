@@ -1,8 +1,8 @@
 // The start: waits for the server, asks who is signed in, and shows the page of the address.
 
 import { ask, onSignedOut } from './api.js';
-import { html, nothing } from './parts/element.js';
 import { render } from 'lit';
+import { html } from './parts/element.js';
 import { signInAgain } from './parts/sign-in-again.js';
 import { say } from './parts/notice.js';
 import { go, matchRoute, start } from './router.js';
@@ -142,5 +142,4 @@ function words(roles) {
   return roles.length === 1 ? `people with the role ${roles[0]}` : `people with one of the roles ${roles.join(', ')}`;
 }
 
-void nothing;
 await begin();

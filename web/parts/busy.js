@@ -1,19 +1,19 @@
 // Says that something takes time, after a moment: what comes at once does not flicker.
 //   <rl-busy label="Reading the lot"></rl-busy>      without an end in sight
-//   <rl-busy label="Sending" .part=${0.4}></rl-busy> 0 to 1
+//   <rl-busy label="Sending" .done=${0.4}></rl-busy> 0 to 1
 
 import { Element, html, nothing } from './element.js';
 
 const waitMs = 250;
 
 class Busy extends Element {
-  static properties = { label: {}, part: { attribute: false }, shown: { state: true } };
+  static properties = { label: {}, done: { attribute: false }, shown: { state: true } };
 
   constructor() {
     super();
     this.label = 'Loading';
     /** @type {number | null} */
-    this.part = null;
+    this.done = null;
     this.shown = false;
   }
 
@@ -32,7 +32,7 @@ class Busy extends Element {
       return nothing;
     return html`
       <div class="busy" role="status">
-        ${this.part === null ? html`<progress aria-label=${this.label}></progress>` : html`<progress aria-label=${this.label} .value=${this.part} max="1"></progress>`}
+        ${this.done === null ? html`<progress aria-label=${this.label}></progress>` : html`<progress aria-label=${this.label} .value=${this.done} max="1"></progress>`}
         <span>${this.label}</span>
       </div>`;
   }

@@ -20,6 +20,7 @@ export class Element extends LitElement {
  * window's title.
  */
 export class Page extends Element {
+  /** @type {import('lit').PropertyDeclarations} */
   static properties = {
     params: { attribute: false },
     query: { attribute: false },
@@ -33,11 +34,11 @@ export class Page extends Element {
     this.query = new URLSearchParams();
     /** @type {AbortController} ended when the page is left */
     this.leaving = new AbortController();
-    this.classList.add('page');
   }
 
   connectedCallback() {
     super.connectedCallback();
+    this.classList.add('page');
     if (this.leaving.signal.aborted)
       this.leaving = new AbortController();
   }

@@ -54,6 +54,64 @@ public sealed class HeaderTests(Lab lab)
     }
 
     [Theory]
+    [InlineData("/lots")]
+    [InlineData("/lots/0199aaaa-0000-7000-8000-000000000001?quantity=phase")]
+    [InlineData("/sign-in")]
+    [InlineData("/no-such-page")]
+    public async Task A_browser_that_asks_for_a_page_gets_the_shell_at_every_address(string address)
+    {
+        using var client = lab.Anonymous();
+        using var request = new HttpRequestMessage(HttpMethod.Get, address);
+        request.Headers.Add("Accept", "text/html,application/xhtml+xml,*/*;q=0.8");
+
+        using var response = await client.SendAsync(request);
+
+        Assert.Equal(HttpStatusCode.OK, response.StatusCode);
+        Assert.Equal("text/html", response.Content.Headers.ContentType?.MediaType);
+        Assert.Contains("<script type=\"importmap\">", await response.Content.ReadAsStringAsync(), StringComparison.Ordinal);
+    }
+
+    [Theory]
+    [InlineData("/api/no-such-route", "text/html")]
+    [InlineData("/health/none", "text/html")]
+    [InlineData("/openapi/none", "text/html")]
+    [InlineData("/a/x/none.js", "text/html")]
+    [InlineData("/lots", "application/json")]
+    [InlineData("/lots", "*/*")]
+    public async Task A_program_and_an_address_of_the_API_get_no_shell(string address, string accept)
+    {
+        using var client = lab.Anonymous();
+        using var request = new HttpRequestMessage(HttpMethod.Get, address);
+        request.Headers.Add("Accept", accept);
+
+        await (await client.SendAsync(request)).ShouldRefuseAsync(HttpStatusCode.NotFound);
+    }
+
+    [Theory]
+    [InlineData("br")]
+    [InlineData("gzip")]
+    public async Task Files_of_the_pages_are_compressed_and_answers_of_the_API_never_are(string encoding)
+    {
+        using var client = lab.Anonymous();
+        client.DefaultRequestHeaders.Add("Accept-Encoding", encoding);
+        var html = await (await lab.Anonymous().GetAsync("/")).Content.ReadAsStringAsync();
+        foreach (var address in html.Split('"').Where(part => part.StartsWith("/a/", StringComparison.Ordinal) && (part.EndsWith(".js", StringComparison.Ordinal) || part.EndsWith(".css", StringComparison.Ordinal))))
+        {
+            using var file = await client.GetAsync(address);
+            Assert.True(file.Content.Headers.ContentEncoding.SequenceEqual([encoding]), address);
+            Assert.Contains("Accept-Encoding", file.Headers.Vary);
+        }
+
+        using var shell = await client.GetAsync("/");
+        Assert.Equal([encoding], shell.Content.Headers.ContentEncoding);
+        foreach (var address in new[] { "/api/about", "/api/session", "/health/live", "/openapi/v1.json" })
+        {
+            using var answer = await client.GetAsync(address);
+            Assert.Empty(answer.Content.Headers.ContentEncoding);
+        }
+    }
+
+    [Theory]
     [InlineData("/a/x/../../appsettings.json")]
     [InlineData("/a/x/%2e%2e/ResponseLedger.sln")]
     [InlineData("/a/x/none.js")]
