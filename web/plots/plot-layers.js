@@ -121,16 +121,19 @@ export function paintName(context, panel, { frequencyHz, values, name, colour },
   context.font = `600 ${theme.textPx}px ${theme.face}`;
   const half = context.measureText(name).width / 2 + 6;
   const tall = theme.textPx / 2 + 2;
-  const isFree = (/** @type {number} */ x, /** @type {number} */ y) => y - tall > panel.top && y + tall < panel.bottom
-    && limits.every((limit) => [x - half, x, x + half].every((at) => !(Math.abs(panel.y(limitAt(limit, panel.frequencyAt(at))) - y) < tall)));
-  for (const share of [0.06, 0.3, 0.5, 0.7, 0.94]) {
+  const curve = (/** @type {number} */ x) => panel.y(valueAt(frequencyHz, values, panel.frequencyAt(x)));
+  const others = limits.map((limit) => (/** @type {number} */ x) => panel.y(limitAt(limit, panel.frequencyAt(x))));
+  const inside = (/** @type {number} */ y) => y - tall > panel.top && y + tall < panel.bottom;
+  const clear = (/** @type {number} */ x, /** @type {number} */ y, /** @type {((x: number) => number)[]} */ lines) => inside(y)
+    && lines.every((line) => [x - half, x, x + half].every((at) => !(Math.abs(line(at) - y) < tall)));
+  const places = [];
+  for (let share = 0.05; share < 1; share += 0.09) {
     const x = Math.min(panel.right - half, Math.max(panel.left + half, panel.left + share * (panel.right - panel.left)));
-    const y = panel.y(valueAt(frequencyHz, values, panel.frequencyAt(x)));
-    if (!(y > panel.top && y < panel.bottom)) continue;
-    for (const off of [-theme.textPx, theme.textPx]) {
-      if (isFree(x, y + off)) return write(context, name, x, y + off, colour, theme.ground);
-    }
+    for (const off of [-1, 1, -2.2, 2.2]) places.push({ x, y: curve(x) + off * theme.textPx });
   }
+
+  const place = places.find(({ x, y }) => clear(x, y, [curve, ...others])) ?? places.find(({ x, y }) => clear(x, y, [curve])) ?? places.find(({ y }) => inside(y));
+  if (place) write(context, name, place.x, place.y, colour, theme.ground);
 }
 
 /** @param {Context} context @param {string} text @param {number} x @param {number} y @param {string} colour @param {string} ground */

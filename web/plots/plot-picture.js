@@ -40,14 +40,14 @@ export class PlotPicture {
     this.over = over;
     this.onPercentiles = onPercentiles;
     this.theme = themeOf(element);
-    this.colours = [rgbOf(this.theme.run), rgbOf(this.theme.series[0])];
+    this.colours = [rgbOf(this.theme.run), rgbOf(this.theme.series[1])];
     this.#chart = new PlotChart(canvas, {
       under: (context, panels) => this.#paint(panels, (panel, model, content) => this.#paintUnder(context, panel, model, content)),
       over: (context, panels) => this.#paint(panels, (panel, model, content) => this.#paintOver(context, panel, model, content)),
     }, () => this.#paintCursorSoon());
     this.#unwatch = watchTheme(() => {
       this.theme = themeOf(element);
-      this.colours = [rgbOf(this.theme.run), rgbOf(this.theme.series[0])];
+      this.colours = [rgbOf(this.theme.run), rgbOf(this.theme.series[1])];
       this.#drawn = [];
       if (this.#content) this.show(this.#content);
     });

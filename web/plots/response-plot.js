@@ -21,7 +21,7 @@ import { intentOf } from './plot-keys.js';
 import { describe, plotModel } from './plot-model.js';
 import { PlotPicture } from './plot-picture.js';
 import { cursorOf, toolsOf } from './plot-controls.js';
-import { legendOf, tableOf } from './plot-readout.js';
+import { legendOf, moreOf } from './plot-readout.js';
 import { isWhole, printView, wholeView } from './plot-view.js';
 import { cursorSentence, quantityWord } from './plot-words.js';
 import { outcomeWord } from './named-runs.js';
@@ -158,14 +158,7 @@ export class ResponsePlot extends Element {
         ${cursorOf(this, { id: this.#id, span: this.#frequency, atHz: this.#atHz, sentence })}
         ${legendOf(this, model, this.#atHz)}
         ${model.notes.map((note) => html`<p class="plot-note">${note}</p>`)}
-        <details class="plot-values" @toggle=${(/** @type {Event} */ event) => { this.open = /** @type {HTMLDetailsElement} */ (event.target).open; }}>
-          <summary>All values at ${frequency(this.#atHz)}</summary>
-          ${this.open ? tableOf(model, this.#atHz, this.raisedRunId) : nothing}
-        </details>
-        <details class="plot-help">
-          <summary>Keys and pointer</summary>
-          <p id="${this.#id}-keys">With the plot in focus: left and right move the cursor, up and down walk through the runs, Enter picks one. Plus and minus zoom, Shift with an arrow moves the view, 0 shows the whole sweep. With a pointer: drag a box to zoom, Shift and drag to move, turn the wheel to zoom once the plot has the focus, double-click for the whole sweep. Two fingers zoom and move.</p>
-        </details>
+        ${moreOf(this, model, { id: this.#id, atHz: this.#atHz, open: this.open })}
         <p class="unseen" role="status">${this.said}</p>
       </figure>`;
   }
