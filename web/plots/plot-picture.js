@@ -3,6 +3,7 @@
 
 import { paintCursorLayer } from './cursor-layer.js';
 import { valueAt } from './curve.js';
+import { limitAt } from './limit-area.js';
 import { PlotChart } from './plot-chart.js';
 import { clipped, paintFan, paintForbidden, paintLimits, paintName } from './plot-layers.js';
 import { rgbOf, themeOf, watchTheme } from './plot-theme.js';
@@ -175,13 +176,19 @@ export class PlotPicture {
   }
 
   /** @param {CanvasRenderingContext2D} context @param {ChartPanel} panel @param {PanelModel} model @param {PictureContent} content */
-  #paintOver(context, panel, { key, set }, { hidden }) {
-    const golden = set.golden;
+  #paintOver(context, panel, { key, set }, { hidden, model: { named } }) {
+    const { golden, frequencyHz } = set;
+    const limits = hidden.has('limits') ? [] : set.limits;
     context.save();
     clipped(context, panel, () => {
-      if (!hidden.has('limits')) paintLimits(context, panel, set.limits, this.theme);
-      if (golden && key === 'upper' && !hidden.has('golden'))
-        paintName(context, panel, { frequencyHz: set.frequencyHz, values: golden.values, name: `golden ${golden.serial}`, colour: this.theme.golden }, hidden.has('limits') ? [] : set.limits, this.theme);
+      paintLimits(context, panel, limits, this.theme);
+      if (!golden || key !== 'upper' || hidden.has('golden')) return;
+      const namedIds = named.map(({ run }) => run.runId).filter((runId) => !hidden.has(runId));
+      const others = [
+        ...limits.map((limit) => (/** @type {number} */ atHz) => limitAt(limit, atHz)),
+        ...set.runs.filter(({ runId }) => namedIds.includes(runId)).map(({ values }) => (/** @type {number} */ atHz) => valueAt(frequencyHz, values, atHz)),
+      ];
+      paintName(context, panel, { frequencyHz, values: golden.values, name: `golden ${golden.serial}`, colour: this.theme.golden }, others, this.theme);
     });
     context.strokeStyle = this.theme.axis;
     context.lineWidth = 1;

@@ -14,7 +14,7 @@
 // run-pick { runId }; view { view, text } once it rests; basis { basis, levelHz }.
 
 import { frequency, parseNumber } from '../numbers.js';
-import { Element, html, nothing, ownStyles, uniqueId } from '../parts/element.js';
+import { Element, html, ownStyles, uniqueId } from '../parts/element.js';
 import { inside, sliderFrequency, stepped } from './cursor-steps.js';
 import { attachGestures, panelAt } from './plot-gestures.js';
 import { intentOf } from './plot-keys.js';
