@@ -15,7 +15,7 @@ import { sharedPainter } from './run-painter.js';
 /** @typedef {import('./plot-model.js').PlotModel} PlotModel */
 /** @typedef {import('./plot-model.js').PanelModel} PanelModel */
 /** @typedef {import('./spans.js').Span} Span */
-/** @typedef {{model: PlotModel, basisHz: number, frequency: Span, values: {[key: string]: Span}, hidden: ReadonlySet<string>, atHz: number, cursorText: string, raised: string | null}} PictureContent */
+/** @typedef {{model: PlotModel, basisHz: number, frequency: Span, values: {[key: string]: Span}, hidden: ReadonlySet<string>, atHz: number, cursorText: string, raised: string | null, handles: import('./cursor-layer.js').Handle[]}} PictureContent */
 
 export class PlotPicture {
   /** @type {PlotChart} */
@@ -215,7 +215,7 @@ export class PlotPicture {
     this.#frame = 0;
     const content = this.#content;
     if (content === null) return;
-    const { model, atHz, cursorText, raised, hidden } = content;
+    const { model, atHz, cursorText, raised, hidden, handles } = content;
     const panels = this.panels;
     const raisedLines = [];
     const dots = [];
@@ -233,6 +233,6 @@ export class PlotPicture {
       if (set.golden && !hidden.has('golden')) dots.push({ panel, value: valueAt(set.frequencyHz, set.golden.values, atHz), colour: this.theme.golden });
     }
 
-    paintCursorLayer(this.over, this.#chart.size, this.#chart.pixelRatio, { panels, atHz, cursorText, raised: raisedLines, dots, box: this.#box, theme: this.theme });
+    paintCursorLayer(this.over, this.#chart.size, this.#chart.pixelRatio, { panels, atHz, cursorText, raised: raisedLines, dots, handles, box: this.#box, theme: this.theme });
   }
 }

@@ -9,27 +9,28 @@
 // basis         asMeasured, minusGolden or levelled; levelHz: where. Give overlays as measured; others are shown as they are
 // view          what is in view, as plot-view.js prints and parses it
 // cursorHz      where the frequency cursor stands
+// handles       places that can be dragged, as [{ panel: 'upper', frequencyHz, value }]: corners of a limit that is edited
 //
 // Events: cursor { frequencyHz, golden, runs, read(runIds) } with values and margins there; run-hover { runId } or null;
-// run-pick { runId }; view { view, text } once it rests; basis { basis, levelHz }.
+// run-pick { runId }; view { view, text } once it rests; basis { basis, levelHz }; handle-move { index, frequencyHz, value, done }.
 
 import { frequency, parseNumber } from '../numbers.js';
 import { Element, html, ownStyles, uniqueId } from '../parts/element.js';
 import { inside, sliderFrequency, stepped } from './cursor-steps.js';
-import { attachGestures, panelAt } from './plot-gestures.js';
+import { attachGestures, handleUnder, panelAt } from './plot-gestures.js';
 import { intentOf } from './plot-keys.js';
 import { describe, plotModel } from './plot-model.js';
 import { PlotPicture } from './plot-picture.js';
 import { cursorOf, toolsOf } from './plot-controls.js';
 import { legendOf, moreOf } from './plot-readout.js';
-import { isWhole, printView, wholeView } from './plot-view.js';
+import { changedView, frequencyIn, isWhole, printView, wholeView } from './plot-view.js';
 import { cursorSentence, quantityWord } from './plot-words.js';
 import { outcomeWord } from './named-runs.js';
 import { nearestRun, neighbourRun } from './nearest-run.js';
 import { sharedPainter } from './run-painter.js';
 import { valueAt } from './curve.js';
 import { goldenReadings, runReadings, spreadAt } from './readings.js';
-import { logAxis, moved, placeOf, sameSpan, straightAxis, within, zoomed } from './spans.js';
+import { logAxis, moved, placeOf, straightAxis, zoomed } from './spans.js';
 import { spanOf } from './value-span.js';
 
 /** @typedef {import('./spans.js').Span} Span */
@@ -41,13 +42,12 @@ sharedPainter();
 await ownStyles(import.meta.url);
 
 const reachPx = 9;
-const leastShare = 1e-3;
 const calmMs = 150;
 
 export class ResponsePlot extends Element {
   static properties = {
     upper: { attribute: false }, lower: { attribute: false }, chosen: { attribute: false }, highlight: { attribute: false },
-    basis: {}, levelHz: { attribute: false }, view: { attribute: false }, cursorHz: { attribute: false }, caption: {},
+    basis: {}, levelHz: { attribute: false }, view: { attribute: false }, cursorHz: { attribute: false }, handles: { attribute: false }, caption: {},
     switchedOff: { state: true }, hovered: { state: true }, problems: { state: true }, said: { state: true }, hasPercentiles: { state: true }, open: { state: true },
   };
 
@@ -81,6 +81,8 @@ export class ResponsePlot extends Element {
     this.view = wholeView;
     /** @type {number | null} */
     this.cursorHz = null;
+    /** @type {import('./cursor-layer.js').Handle[]} */
+    this.handles = [];
     this.caption = '';
     /** @type {ReadonlySet<string>} what the legend has switched off */
     this.switchedOff = new Set();
@@ -117,8 +119,7 @@ export class ResponsePlot extends Element {
 
   /** What is in view of the frequencies. @returns {Span} */
   get #frequency() {
-    const whole = this.#model?.frequency ?? { min: 1, max: 10 };
-    return this.view.frequency === null ? whole : within(logAxis, this.view.frequency, whole, leastShare);
+    return frequencyIn(this.view, this.#model?.frequency ?? { min: 1, max: 10 });
   }
 
   disconnectedCallback() {
@@ -170,7 +171,7 @@ export class ResponsePlot extends Element {
     this.#picture?.show({
       model, basisHz: this.levelFrequencyHz, frequency: this.#frequency, hidden: this.switchedOff,
       values: Object.fromEntries(model.panels.map((panel) => [panel.key, this.#valuesOf(panel)])),
-      atHz: this.#atHz, cursorText: frequency(this.#atHz), raised: this.raisedRunId,
+      atHz: this.#atHz, cursorText: frequency(this.#atHz), raised: this.raisedRunId, handles: this.handles,
     });
   }
 
@@ -206,23 +207,9 @@ export class ResponsePlot extends Element {
   }
 
   /** @param {import('./plot-gestures.js').ViewChange} change */
-  changeView({ frequency: span, values = [] }) {
-    const model = this.#model;
-    if (model === null) return;
-    const view = { ...this.view };
-    if (span) {
-      const kept = within(logAxis, span, model.frequency, leastShare);
-      view.frequency = sameSpan(kept, model.frequency) ? null : kept;
-    }
-
-    for (const { key, span: wanted } of values) {
-      const panel = model.panels.find((one) => one.key === key);
-      if (panel === undefined) continue;
-      const kept = within(straightAxis, wanted, zoomed(straightAxis, panel.span, 3), leastShare);
-      view[key] = sameSpan(kept, panel.span) ? null : kept;
-    }
-
-    this.view = view;
+  changeView(change) {
+    if (this.#model === null) return;
+    this.view = changedView(this.view, this.#model, change);
     this.#tellView();
   }
 
@@ -374,10 +361,18 @@ export class ResponsePlot extends Element {
         this.#follow();
         this.#pickRaised();
       },
+      grab: (place) => handleUnder(this.#picture?.panels ?? [], this.handles, place),
+      dragHandle: (index, place, done) => this.#dragHandle(index, place, done),
       drawBox: (box) => this.#picture?.drawBox(box),
       change: (change) => this.changeView(change),
       whole: () => this.showWhole(),
     });
+  }
+
+  /** @param {number} index @param {Place} place @param {boolean} done */
+  #dragHandle(index, place, done) {
+    const panel = this.#picture?.panels.find(({ key }) => key === this.handles[index]?.panel);
+    if (panel) this.tell('handle-move', { index, frequencyHz: panel.frequencyAt(place.x), value: panel.valueAt(place.y), done });
   }
 
   #dropPicture() {
