@@ -343,7 +343,7 @@ export class ResponsePlot extends Element {
 
   #tellView() {
     clearTimeout(this.#calm);
-    this.#calm = window.setTimeout(() => this.tell('view', { view: this.view, text: printView(this.view) }), calmMs);
+    this.#calm = setTimeout(() => this.tell('view', { view: this.view, text: printView(this.view) }), calmMs);
   }
 
   #makePicture() {
