@@ -1,7 +1,15 @@
 // The table of pages: an address, the element that shows it, and who may see it. DEVELOPERS.md says how a page is added.
 
+import { may } from './session.js';
+
 /** @type {readonly import('./router.js').Route[]} */
 export const routes = [
   { pattern: '/lots', tag: 'rl-page-lots', load: () => import('./pages/lots.js'), title: 'Lots' },
+  { pattern: '/benches', tag: 'rl-page-benches', load: () => import('./pages/benches.js'), title: 'Benches' },
+  { pattern: '/benches/{id}', tag: 'rl-page-bench', load: () => import('./pages/bench.js'), title: 'Bench' },
+  { pattern: '/people', tag: 'rl-page-people', load: () => import('./pages/people.js'), title: 'People', roles: may.manage },
+  { pattern: '/tokens', tag: 'rl-page-tokens', load: () => import('./pages/tokens.js'), title: 'Tokens', roles: may.manage },
+  { pattern: '/ledger', tag: 'rl-page-ledger', load: () => import('./pages/ledger.js'), title: 'Ledger' },
+  { pattern: '/checklist', tag: 'rl-page-checklist', load: () => import('./pages/checklist.js'), title: 'Checklist', roles: may.manage },
   { pattern: '/password', tag: 'rl-page-password', load: () => import('./pages/password.js'), title: 'Change password' },
 ];
