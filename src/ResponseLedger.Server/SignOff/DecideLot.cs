@@ -3,6 +3,7 @@ using System.Text.Json.Nodes;
 using Microsoft.AspNetCore.Http.HttpResults;
 using Microsoft.EntityFrameworkCore;
 using ResponseLedger.Records.Decisions;
+using ResponseLedger.Server.Devices;
 using ResponseLedger.Server.Http;
 using ResponseLedger.Server.Lots;
 using ResponseLedger.Server.People;

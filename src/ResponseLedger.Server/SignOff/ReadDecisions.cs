@@ -28,7 +28,7 @@ internal static class ReadDecisions
     {
         var found = await WithReopening(db, db.Decisions.Where(d => d.Id == id)).SingleOrDefaultAsync(cancellationToken)
             ?? throw new RefusedException(new NothingThere("decision"));
-        return TypedResults.Ok(DecisionView.Of(found.Decision, found.Undone, d.UndoneBy, withRecord: true));
+        return TypedResults.Ok(DecisionView.Of(found.Decision, found.Undone, found.UndoneBy, withRecord: true));
     }
 
     public static async Task<FileContentHttpResult> RecordAsync(Guid id, ResponseLedgerContext db, CancellationToken cancellationToken)

@@ -2,7 +2,6 @@ using System.Security.Claims;
 using Microsoft.AspNetCore.Http.HttpResults;
 using Microsoft.EntityFrameworkCore;
 using ResponseLedger.Engine.Masks;
-using ResponseLedger.Ledger;
 using ResponseLedger.Records.Decisions;
 using ResponseLedger.Records.Verdicts;
 using ResponseLedger.Server.Http;
@@ -95,7 +94,7 @@ internal static class ReadSigning
                 c.GoldenRunId is { } golden ? serials[golden] : null))],
             [.. from unit in standing.Units
                 where unit.Disposition is not null
-                select new SigningUnitView(unit.UnitId, unit.Serial, unit.Outcome, unit.Disposition.Kind, unit.Disposition.Reason)],
+                select new SigningUnitView(unit.UnitId, unit.Serial, unit.Outcome, unit.Disposition!.Kind, unit.Disposition.Reason)],
             Judge.EngineVersion,
             DecisionDraft.SimpleAcceptance,
             new RecommendationView(recommendation.Decision is { } word ? DecisionWords.Format(word) : null, recommendation.Sentence),

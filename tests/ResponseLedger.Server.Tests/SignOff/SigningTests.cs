@@ -27,7 +27,7 @@ public sealed class SigningTests(Lab lab)
         Assert.Equal(1, shown.GetProperty("ordinal").GetInt32());
         Assert.Equal(1, shown.GetProperty("invalidated").GetInt32());
         Assert.Equal(scene.LotNumber, shown.GetProperty("number").GetString());
-        Assert.Equal(record.GetProperty("engine").GetInt32(), shown.GetProperty("engine").GetInt32());
+        Assert.Equal(record.GetProperty("engineVersion").GetInt32(), shown.GetProperty("engine").GetInt32());
         foreach (var count in record.GetProperty("counts").EnumerateObject())
             Assert.Equal(count.Value.GetInt32(), shown.GetProperty("counts").GetProperty(count.Name).GetInt32());
         var condition = Assert.Single(shown.GetProperty("conditions").EnumerateArray());
