@@ -38,9 +38,13 @@ test('Each filter shows the units of its name, in their order', () => {
 
 test('Filters that fit no unit are left out, but the usual ones and the chosen one stand', () => {
   const passing = [unit('SN1', 'pass')];
-  assert.deepEqual(filtersOf(passing, 'all').map(({ filter, count }) => [filter, count]), [['all', 1], ['failing', 0], ['inconclusive', 0], ['untested', 0]]);
-  assert.ok(filtersOf(passing, 'disposed').some(({ filter }) => filter === 'disposed'));
-  assert.ok(filtersOf(units, 'all').some(({ filter }) => filter === 'retested'));
+  assert.deepEqual(filtersOf({ size: 1, counts: { units: 1 } }, passing, 'all').map(({ filter, count }) => [filter, count]), [['all', 1], ['failing', 0], ['inconclusive', 0], ['untested', 0]]);
+  assert.ok(filtersOf(lot(), passing, 'disposed').some(({ filter }) => filter === 'disposed'));
+  assert.ok(filtersOf(lot(), units, 'all').some(({ filter }) => filter === 'retested'));
+});
+
+test('Units without a name count as untested', () => {
+  assert.equal(filtersOf(lot({ size: 9 }), units, 'all').find(({ filter }) => filter === 'untested')?.count, 1 + 4);
 });
 
 test('A run leads to its unit in whatever condition, and a unit to its run in one', () => {

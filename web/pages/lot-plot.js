@@ -11,16 +11,21 @@ import '../plots/response-plot.js';
 
 /** @param {LotPage} page @param {any} lot @param {readonly any[]} units */
 export function plotPanel(page, lot, units) {
-  const { state, condition } = page;
   return html`
     <section class="panel lot-plot" aria-labelledby="lot-plot">
-      <div class="lot-plot-head">
-        <h2 id="lot-plot">Curves</h2>
-        ${lot.conditions.length < 2 ? nothing : choice('Condition', condition.name, lot.conditions.map((/** @type {any} */ one) => [one.name, one.name]), (name) => page.showCurves({ condition: name === lot.conditions[0].name ? '' : name }))}
-        ${choice('Quantities', state.show, showOptions, (show) => page.showCurves({ show: /** @type {any} */ (show) }))}
-      </div>
+      <h2 id="lot-plot" class="unseen">Curves</h2>
       ${curvesOf(page, lot, units)}
     </section>`;
+}
+
+/** What is shown: of which condition, and which quantities. @param {LotPage} page @param {any} lot */
+function chooser(page, lot) {
+  const { state, condition } = page;
+  return html`
+    <div class="lot-chooser">
+      ${lot.conditions.length < 2 ? nothing : choice('Condition', condition.name, lot.conditions.map((/** @type {any} */ one) => [one.name, one.name]), (name) => page.showCurves({ condition: name === lot.conditions[0].name ? '' : name }))}
+      ${choice('Quantities', state.show, showOptions, (show) => page.showCurves({ show: /** @type {any} */ (show) }))}
+    </div>`;
 }
 
 /** @param {string} label @param {string} chosen @param {readonly (readonly [string, string])[]} options @param {(value: string) => void} choose */
@@ -38,18 +43,18 @@ function curvesOf(page, lot, units) {
   if (condition === null)
     return html`<p class="soft">The device has no condition.</p>`;
   if (!units.some((unit) => runOf(unit, condition.id) !== null))
-    return noRun(lot, condition);
+    return html`${chooser(page, lot)}${noRun(lot, condition)}`;
   if (page.plotRefusal !== null)
-    return html`<rl-refusal .answer=${page.plotRefusal} @again=${() => page.loadCurves({ anew: true })}></rl-refusal>`;
+    return html`${chooser(page, lot)}<rl-refusal .answer=${page.plotRefusal} @again=${() => page.loadCurves({ anew: true })}></rl-refusal>`;
   const [upperName, lowerName] = panelsOf(state.show);
   const [first, second] = [page.overlayOf(upperName), page.overlayOf(lowerName)];
   if (first === null || (lowerName !== null && second === null))
-    return html`<div class="plot-wait"><rl-busy label="Reading the curves"></rl-busy></div>`;
+    return html`${chooser(page, lot)}<div class="plot-wait"><rl-busy label="Reading the curves"></rl-busy></div>`;
   const [upper, lower] = [first, second].filter((overlay) => overlay !== null && hasValues(overlay));
   const lost = [first, second].filter((overlay) => overlay !== null && !hasValues(overlay)).map((overlay) => overlay.quantity);
   return html`
-    ${upper === undefined ? html`<p class="soft">The runs are magnitude only: there is no ${lost.join(' and no ')} to show. <button type="button" class="plain link" @click=${() => page.showCurves({ show: 'gain' })}>Show the gain</button></p>` : html`
-      <rl-response-plot .upper=${upper} .lower=${lower ?? null} .basis=${state.basis} .levelHz=${state.level} .view=${page.view} .cursorHz=${page.atHz}
+    ${upper === undefined ? html`${chooser(page, lot)}<p class="soft">The runs are magnitude only: there is no ${lost.join(' and no ')} to show. <button type="button" class="plain link" @click=${() => page.showCurves({ show: 'gain' })}>Show the gain</button></p>` : html`
+      <rl-response-plot .upper=${upper} .lower=${lower ?? null} .basis=${state.basis} .levelHz=${state.level} .view=${page.view} .cursorHz=${page.atHz} .tools=${chooser(page, lot)}
         @cursor=${page.onCursor} @run-hover=${page.onRunHover} @run-pick=${page.onRunPick} @view=${page.onView} @basis=${page.onBasis}></rl-response-plot>
       ${lost.length > 0 ? html`<p class="small soft">The runs are magnitude only: there is no ${lost.join(' and no ')} to show.</p>` : nothing}`}
     ${(first.notes ?? []).map((/** @type {any} */ note) => html`<p class="small soft">${note.message}${note.code === 'noReleasedMask' && session.holds(may.engineer) ? html` <a href="/devices/${lot.deviceId}">Go to the device</a>` : nothing}</p>`)}`;

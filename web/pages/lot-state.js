@@ -58,14 +58,17 @@ const filters = {
 };
 
 /**
- * The filters of a lot's units with how many fit each; those that always stand there, and those that fit a unit.
+ * The filters of a lot's units with how many fit each; those that always stand there, and those that fit a unit. Units without a
+ * name are untested.
+ * @param {{ size: number, counts: { units: number } }} lot
  * @param {readonly any[]} units
  * @param {UnitFilter} chosen
  */
-export function filtersOf(units, chosen) {
+export function filtersOf({ size, counts }, units, chosen) {
+  const unnamedUnits = Math.max(0, size - counts.units);
   const always = ['all', 'failing', 'inconclusive', 'untested'];
   return /** @type {UnitFilter[]} */ (Object.keys(filters))
-    .map((filter) => ({ filter, words: filters[filter].words, count: units.filter(filters[filter].fits).length }))
+    .map((filter) => ({ filter, words: filters[filter].words, count: units.filter(filters[filter].fits).length + (filter === 'untested' ? unnamedUnits : 0) }))
     .filter(({ filter, count: fitting }) => always.includes(filter) || filter === chosen || (fitting > 0 && filter !== 'open'));
 }
 
@@ -109,7 +112,7 @@ export function evidenceOf(lot, units) {
   const standing = codes.length === 0 ? 'approve' : codes.every((/** @type {string} */ code) => code === 'concessionNeeded') ? 'concession' : 'not';
   return {
     standing,
-    words: { approve: 'Can be approved', concession: 'Can be approved with concession', not: 'Cannot be approved now' }[standing],
+    words: { approve: 'Can be approved', concession: 'Can be approved with concession', not: 'Cannot be approved' }[standing],
     pro: proOf(lot, units),
     con: [...blockers, ...doubtsOf(counts, units, size)],
   };

@@ -72,12 +72,12 @@ export function unitsPanel(page, lot, units) {
         <input type="search" aria-label="Find a unit by its serial number" placeholder="find a serial number" .value=${state.find} @input=${page.onFind}>
       </div>
       <div class="chips" role="group" aria-label="Which units">
-        ${filtersOf(units, state.units).map(({ filter, words, count }) => html`
+        ${filtersOf(lot, units, state.units).map(({ filter, words, count }) => html`
           <button type="button" aria-pressed=${filter === state.units ? 'true' : 'false'} ?disabled=${count === 0 && filter !== state.units} @click=${() => page.filterUnits(filter)}>${words} <span class="count">${count}</span></button>`)}
       </div>
       <rl-data-table pickable caption="Units of the lot" caption-unseen sort="margin" .columns=${guard([lot], () => columnsOf(lot.conditions))}
         .rows=${guard([units, state.units, state.find], () => fittingUnits(units, state.units, state.find))} .keyOf=${keyOf} .chosen=${state.unit === '' ? null : state.unit}
-        .empty=${guard([units], () => noUnit(page, units))}
+        .empty=${guard([units, state.units], () => noUnit(page, units))}
         @pick=${page.onPickUnit} @row-hover=${page.onRowHover}></rl-data-table>
       ${more === '' || state.units === 'failing' || state.units === 'inconclusive' ? nothing : html`<p class="small soft">${more}</p>`}
     </section>`;
@@ -86,7 +86,7 @@ export function unitsPanel(page, lot, units) {
 /** @param {LotPage} page @param {readonly any[]} units */
 function noUnit(page, units) {
   return units.length === 0 ? html`<p class="soft">No unit is known yet: units come in with their first run.</p>`
-    : html`<p class="soft">No unit fits. <button type="button" class="plain link" @click=${() => page.filterUnits('all')}>Show all</button></p>`;
+    : html`<p class="soft">No unit that is known fits. <button type="button" class="plain link" @click=${() => page.filterUnits('all')}>Show all</button></p>`;
 }
 
 /** @param {any} unit */

@@ -9,6 +9,7 @@
 // basis         asMeasured, minusGolden or levelled; levelHz: where. Give overlays as measured; others are shown as they are
 // view          what is in view, as plot-view.js prints and parses it
 // cursorHz      where the frequency cursor stands
+// tools         further controls, at the beginning of the row of them
 //
 // Events: cursor { frequencyHz, golden, runs, read(runIds) } with values and margins there; run-hover { runId } or null;
 // run-pick { runId }; view { view, text } once it rests; basis { basis, levelHz }.
@@ -47,7 +48,7 @@ const calmMs = 150;
 export class ResponsePlot extends Element {
   static properties = {
     upper: { attribute: false }, lower: { attribute: false }, chosen: { attribute: false }, highlight: { attribute: false },
-    basis: {}, levelHz: { attribute: false }, view: { attribute: false }, cursorHz: { attribute: false }, caption: {},
+    basis: {}, levelHz: { attribute: false }, view: { attribute: false }, cursorHz: { attribute: false }, caption: {}, tools: { attribute: false },
     switchedOff: { state: true }, hovered: { state: true }, problems: { state: true }, said: { state: true }, hasPercentiles: { state: true }, open: { state: true },
   };
 
@@ -82,6 +83,8 @@ export class ResponsePlot extends Element {
     /** @type {number | null} */
     this.cursorHz = null;
     this.caption = '';
+    /** @type {unknown} */
+    this.tools = nothing;
     /** @type {ReadonlySet<string>} what the legend has switched off */
     this.switchedOff = new Set();
     /** @type {string | null} */
