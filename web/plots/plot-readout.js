@@ -89,7 +89,7 @@ export function tableOf(model, atHz, raised) {
   const golden = goldenReadings(sets, atHz);
   const goldenSerial = sets.find((set) => set.golden !== null)?.golden?.serial;
   return html`
-    <div class="scroll">
+    <div class="scroll" tabindex="0" role="region" aria-label="Values under the cursor">
       <table>
         <caption>Values at ${frequency(atHz, 6)}</caption>
         <thead>

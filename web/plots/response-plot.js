@@ -255,20 +255,22 @@ export class ResponsePlot extends Element {
     this.#moveCursor(sliderFrequency(this.#frequency, place, this.#atHz, this.#gridHz));
   }
 
-  /** @param {string} typed */
+  /** @param {string} typed @returns {number | null} the frequency, or null where it was refused */
   typeCursor(typed) {
     const atHz = this.#typedFrequency(typed, 'cursor');
-    if (atHz === null) return;
+    if (atHz === null) return null;
     if (atHz < this.#frequency.min || atHz > this.#frequency.max) this.showWhole();
     this.#moveCursor(atHz);
+    return atHz;
   }
 
-  /** @param {string} typed */
+  /** @param {string} typed @returns {number | null} */
   typeLevel(typed) {
     const atHz = this.#typedFrequency(typed, 'level');
-    if (atHz === null) return;
+    if (atHz === null) return null;
     this.levelHz = atHz;
     this.tell('basis', { basis: this.basis, levelHz: atHz });
+    return atHz;
   }
 
   /** @param {KeyboardEvent} event */
