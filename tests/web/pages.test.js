@@ -31,6 +31,7 @@ test('A token is valid, soon expires, is expired, or is revoked whatever its dat
 test('An entry is about names, numbers and the pages of its ids', () => {
   assert.deepEqual(aboutOf({ lotId: 'a', number: '17', benchId: null, unitId: 'u', serialNumber: 'SN 1' }), [
     { text: 'number 17', href: null }, { text: 'serial number SN 1', href: null }, { text: 'lot', href: '/lots/a' }]);
+  assert.deepEqual(aboutOf({ lotId: 'a' }, { decision: 'approve', reason: 'All pass', sha256: 'x', old: { a: 1 } }).map(({ text }) => text), ['decision approve', 'reason All pass', 'lot']);
   assert.equal(wordsOf('run.received'), 'Run received');
   assert.equal(wordsOf('new.kind'), 'new.kind');
 });

@@ -18,7 +18,7 @@ const columns = [
   { key: 'name', label: 'Bench', head: true, sort: (bench) => bench.name, cell: (bench) => bench.name },
   { key: 'seen', label: 'Last heard of', sort: (bench) => (bench.lastSeenAt === null ? null : -Date.parse(bench.lastSeenAt)), cell: (bench) => (bench.lastSeenAt === null ? html`<span class="soft">never</span>` : when(bench.lastSeenAt, ' ago')) },
   { key: 'serial', label: 'Finds serial numbers by', cell: (bench) => (bench.serialPattern === null ? html`<span class="soft">the part before the first _</span>` : html`<code>${bench.serialPattern}</code>`) },
-  { key: 'floor', label: 'Noise floor', number: true, sort: (bench) => bench.noiseFloorDb, cell: (bench) => (bench.noiseFloorDb === null ? html`<span class="soft">not stated</span>` : quantity(bench.noiseFloorDb, 'dB')) },
+  { key: 'floor', label: 'Noise floor', sort: (bench) => bench.noiseFloorDb, cell: (bench) => (bench.noiseFloorDb === null ? html`<span class="soft">not stated</span>` : quantity(bench.noiseFloorDb, 'dB')) },
   { key: 'columns', label: 'Answers kept', cell: (bench) => (bench.columns.length === 0 ? html`<span class="soft">none</span>` : `for ${several(bench.columns.length, 'kind of file', 'kinds of files')}`) },
   { key: 'remark', label: 'Remark', cell: (bench) => bench.remark ?? nothing },
 ];

@@ -43,13 +43,20 @@ export function wordsOf(kind) {
   return kindWords[kind] ?? kind;
 }
 
+/** Members of an entry's detail that say in a few words what happened. */
+const telling = ['name', 'number', 'title', 'revision', 'decision', 'disposition', 'cause', 'outcome', 'reason'];
+
 /**
  * What an entry is about: names and numbers as they stand, and links for ids that have a page.
  * @param {Record<string, unknown>} subject
+ * @param {Record<string, unknown>} [detail]
  * @returns {{ text: string, href: string | null }[]}
  */
-export function aboutOf(subject) {
-  const named = Object.entries(subject).filter(([name, value]) => value !== null && !/Id$/.test(name) && typeof value !== 'object').map(([name, value]) => ({ text: `${spoken(name)} ${String(value)}`, href: null }));
+export function aboutOf(subject, detail = {}) {
+  const told = telling.filter((name) => !(name in subject)).map((name) => /** @type {const} */ ([name, detail[name]]));
+  const named = [...Object.entries(subject), ...told]
+    .filter(([name, value]) => value !== null && value !== undefined && !/Id$/.test(name) && typeof value !== 'object')
+    .map(([name, value]) => ({ text: `${spoken(name)} ${String(value)}`, href: null }));
   const linked = Object.entries(subject).filter(([name, value]) => name in pageOf && typeof value === 'string').map(([name, value]) => ({ text: spoken(name.replace(/Id$/, '')), href: `${pageOf[name]}${value}` }));
   return [...named, ...linked];
 }

@@ -1,5 +1,6 @@
 // The ledger: everything that mattered, in the order in which it was sealed, with the exact bytes of each entry.
 
+import { withQuery } from '../api.js';
 import { Page, html, nothing, ownStyles } from '../parts/element.js';
 import { Listing } from '../parts/listing.js';
 import { dayAndTime, several } from '../numbers.js';
@@ -8,7 +9,6 @@ import { aboutOf, kindGroups, wordsOf } from './ledger-words.js';
 import '../parts/busy.js';
 import '../parts/field.js';
 import '../parts/refusal.js';
-import { withQuery } from '../api.js';
 
 await ownStyles(import.meta.url);
 
@@ -73,9 +73,9 @@ class LedgerPage extends Page {
           <summary>
             <span class="position">${position}</span>
             <span class="what">${wordsOf(kind)}</span>
-            <span class="who">${entry.actor.name}${entry.actor.kind === 'person' ? '' : ` (${entry.actor.kind})`}</span>
+            <span class="who">${entry.actor.name}${entry.actor.kind !== 'bench' ? '' : ` (${entry.actor.kind})`}</span>
             <time datetime=${at}>${dayAndTime(at)}</time>
-            <span class="about">${aboutOf(entry.subject).filter(({ href }) => href === null).map(({ text: words }) => words).join(', ')}</span>
+            <span class="about">${aboutOf(entry.subject, entry.detail).filter(({ href }) => href === null).map(({ text: words }) => words).join(', ')}</span>
           </summary>
           <div class="entry-inside">
             <p class="row">${aboutOf(entry.subject).filter(({ href }) => href !== null).map(({ text: words, href }) => html`<a href=${String(href)}>Go to the ${words}</a>`)}</p>

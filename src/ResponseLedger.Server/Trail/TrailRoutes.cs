@@ -49,10 +49,13 @@ internal static class TrailRoutes
         if (order is not (null or "" or Oldest or Newest))
             throw new RefusedException(new FieldRefused("order", $"The order is {Oldest} or {Newest}."));
         var size = 1 + (await db.LedgerPositions.MaxAsync(p => (long?)p.Position, cancellationToken) ?? -1);
+
+        // What came meanwhile is left out, so that size and items speak of one moment.
+        var end = Math.Min(before ?? size, size);
         var found =
             from position in db.LedgerPositions
             join entry in Entries(db, Given("kind", kind), Given("search", search)) on position.EntryId equals entry.Id
-            where (after == null || position.Position > after) && (before == null || position.Position < before)
+            where position.Position < end && (after == null || position.Position > after)
             select new { position.Position, entry.Kind, entry.At, entry.Bytes };
         var rows = await (order == Newest ? found.OrderByDescending(r => r.Position) : found.OrderBy(r => r.Position))
             .AsNoTracking().Take(take + 1).ToListAsync(cancellationToken);
