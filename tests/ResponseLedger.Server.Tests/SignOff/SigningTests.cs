@@ -37,12 +37,12 @@ public sealed class SigningTests(Lab lab)
         Assert.Equal((golden, "golden"), (condition.GetProperty("goldenRunId").GetString(), condition.GetProperty("goldenSerial").GetString()));
         var unit = Assert.Single(shown.GetProperty("dispositions").EnumerateArray());
         Assert.Equal(("b", "concession", "As agreed."), (unit.GetProperty("serial").GetString(), unit.GetProperty("disposition").GetString(), unit.GetProperty("reason").GetString()));
-        var choice = shown.GetProperty("choices").Item("decision", "approveWithConcession");
+        var choice = Choice(shown, "approveWithConcession");
         Assert.Empty(choice.GetProperty("blockers").EnumerateArray());
         Assert.Equal(decision.GetProperty("meaning").GetString(), choice.GetProperty("meaning").GetString());
         Assert.Equal("approveWithConcession", shown.GetProperty("recommendation").GetProperty("decision").GetString());
         Assert.Equal(record.GetProperty("recommendation").GetProperty("sentence").GetString(), shown.GetProperty("recommendation").GetProperty("sentence").GetString());
-        Assert.Equal(["concessionNeeded"], shown.GetProperty("choices").Item("decision", "approve").GetProperty("blockers").EnumerateArray().Select(b => b.GetProperty("code").GetString()));
+        Assert.Equal(["concessionNeeded"], Choice(shown, "approve").GetProperty("blockers").EnumerateArray().Select(b => b.GetProperty("code").GetString()));
     }
 
     [Theory]
@@ -111,6 +111,9 @@ public sealed class SigningTests(Lab lab)
     }
 
     private static Task<JsonElement> ShownAsync(LotScene scene) => scene.GetAsync($"/api/lots/{scene.LotId}/signing");
+
+    private static JsonElement Choice(JsonElement shown, string decision)
+        => shown.GetProperty("choices").EnumerateArray().Single(c => c.GetProperty("decision").GetString() == decision);
 
     private static Task<HttpResponseMessage> SignAsync(LotScene scene, string decision, string seen)
         => scene.Engineer.PostAsJsonAsync($"/api/lots/{scene.LotId}/decisions", new { decision, reason = "Reviewed.", password = Lab.Password, seen });
