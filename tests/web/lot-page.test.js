@@ -86,6 +86,7 @@ test('Verdicts are called current only while none is pending and each condition 
 test('A worst criterion says where it lies, if it lies anywhere', () => {
   assert.equal(plain(placeOf({ criterion: 'bandwidth', frequencyHz: null })), 'bandwidth');
   assert.equal(plain(placeOf({ criterion: 'top', frequencyHz: 12_500 })), 'top at 12.5 kHz');
+  assert.equal(placeOf({ criterion: 'Gain at 1 kHz', frequencyHz: 1_000 }), 'Gain at 1 kHz');
   assert.equal(placeOf(null), '');
 });
 

@@ -18,7 +18,7 @@ export function headOf(page, lot) {
       <div class="lot-name">
         <h1>Lot ${lot.number}</h1>
         <rl-lot-state state=${lot.state}></rl-lot-state>
-        <p class="soft"><a href="/devices/${lot.deviceId}">${lot.partNumber} ${lot.revision}</a>, ${lot.title}. ${several(lot.size, 'unit')}, opened ${opened}${opened === 'just now' ? '' : ' ago'}.</p>
+        <p class="soft"><a href="/devices/${lot.deviceId}">${lot.partNumber} ${lot.revision}</a>, ${lot.title}. ${several(lot.size, 'unit')}, opened ${opened}${opened === 'just now' ? '' : ' ago'}${lot.lastRunAt === null ? nothing : html`, last run ${when(lot.lastRunAt, age(lot.lastRunAt, Date.now()) === 'just now' ? '' : ' ago')}`}.</p>
       </div>
       <div class="row">
         ${lot.state === 'open' && session.holds(may.operate) ? html`<a class="button" href="/send?lot=${lot.id}">Send files</a>` : nothing}
@@ -35,7 +35,7 @@ export function factsOf(lot, device) {
     <section class="lot-facts" aria-label="How the units stand">
       <rl-units-bar .size=${lot.size} .counts=${counts}></rl-units-bar>
       <p class="small">${firstPass.tested === 0 ? 'Nothing is fully tested yet.'
-    : html`First pass ${percent(firstPass.passed, firstPass.tested)} (${count(firstPass.passed)} of ${count(firstPass.tested)}), now ${percent(counts.passed, counts.tested)}${lot.lastRunAt === null ? '' : html`; last run ${when(lot.lastRunAt, ' ago')}`}.`}</p>
+    : html`First pass ${percent(firstPass.passed, firstPass.tested)} (${count(firstPass.passed)} of ${count(firstPass.tested)}), now ${percent(counts.passed, counts.tested)}.`}</p>
       <ul class="plain small">
         ${lot.conditions.map((/** @type {any} */ condition) => html`<li><strong>${condition.name}</strong>: ${basisOf(condition, device)}</li>`)}
       </ul>
@@ -46,7 +46,7 @@ export function factsOf(lot, device) {
 function basisOf(condition, device) {
   const known = device?.conditions.find((/** @type {any} */ one) => one.id === condition.id);
   const golden = condition.goldenRunId === null ? 'no golden run'
-    : html`golden run <a href="/runs/${condition.goldenRunId}">${known?.golden?.runId === condition.goldenRunId ? known.golden.serial : 'pinned'}</a>`;
+    : html`golden <a href="/runs/${condition.goldenRunId}">${known?.golden?.runId === condition.goldenRunId ? known.golden.serial : 'pinned'}</a>`;
   const mask = condition.maskRevision === null ? html`<span class="problem">no mask is released</span>`
     : known?.maskRevision === condition.maskRevision ? html`<a href="/masks/${known.maskId}">mask revision ${condition.maskRevision}</a>` : `mask revision ${condition.maskRevision}`;
   return html`${mask}, ${golden}`;

@@ -12,6 +12,8 @@ import '../parts/field.js';
 /** @typedef {import('../api.js').Answer} Answer */
 
 const choices = /** @type {const} */ (['approve', 'approveWithConcession', 'reject']);
+/** @typedef {typeof choices[number]} Word */
+
 const acts = { approve: 'Approve', approveWithConcession: 'Approve with concession', reject: 'Reject' };
 
 /**
@@ -31,16 +33,17 @@ export async function signLot(lot, signing, name) {
   }
 
   let shown = signing;
-  /** @type {keyof typeof acts} */
-  let decision = signing.recommendation.decision ?? 'reject';
+  // An approval that is recommended is chosen at first; a rejection nobody signs without choosing it.
+  /** @type {Word | null} */
+  let decision = signing.recommendation.decision === 'reject' ? null : signing.recommendation.decision;
   let isDecided = false;
-  const chosen = () => shown.choices.find((/** @type {any} */ choice) => choice.decision === decision);
+  const chosen = () => (decision === null ? null : choiceIn(shown, decision));
   return formDialog({
     heading: `Sign off lot ${signing.number}`,
     wide: true,
-    act: () => `Sign: ${acts[decision].toLowerCase()}`,
+    act: () => (decision === null ? 'Sign' : `Sign: ${acts[decision].toLowerCase()}`),
     grave: false,
-    mayAct: () => !isDecided && chosen().blockers.length === 0,
+    mayAct: () => !isDecided && chosen()?.blockers.length === 0,
     fields: ({ errors, update, close }) => html`
       <div class="sign">
         <div class="sign-what">${whatIsSigned(shown, lot)}</div>
@@ -51,7 +54,7 @@ export async function signLot(lot, signing, name) {
           </fieldset>
           <div class="meaning-box" aria-live="polite">
             <p class="small soft">Your signature, ${name}, means:</p>
-            <p class="meaning">“${chosen().meaning}”</p>
+            ${decision === null ? html`<p>Choose a decision.</p>` : html`<p class="meaning">“${choiceIn(shown, decision).meaning}”</p>`}
           </div>
           <rl-field label="Reason" name="reason" rows="3" ?optional=${decision === 'approve'} ?required=${decision !== 'approve'} hint="It stands in the signed record." .errors=${errors.reason}></rl-field>
           <rl-field label="Your password" name="password" type="password" autocomplete="current-password" required hint="It signs in your name." .errors=${errors.password}></rl-field>
@@ -95,14 +98,20 @@ async function whoDecided(lotId) {
   return `Somebody else has decided this lot meanwhile.${by} Nothing of yours was signed.`;
 }
 
-/** @param {any} shown @param {keyof typeof acts} word @param {boolean} isChosen @param {() => void} choose */
+/** @param {any} shown @param {Word} word @returns {{ meaning: string, blockers: { code: string, sentence: string }[] }} */
+const choiceIn = (shown, word) => shown.choices.find((/** @type {any} */ choice) => choice.decision === word);
+
+/** @param {any} shown @param {Word} word @param {boolean} isChosen @param {() => void} choose */
 function choiceOf(shown, word, isChosen, choose) {
-  const { blockers } = shown.choices.find((/** @type {any} */ choice) => choice.decision === word);
+  const { blockers } = choiceIn(shown, word);
+  // What stands against an approval is said once.
+  const said = word === 'approveWithConcession' ? choiceIn(shown, 'approve').blockers.map(({ code }) => code) : [];
+  const told = [...(blockers.some(({ code }) => said.includes(code)) ? ['The same stands against it.'] : []), ...blockers.filter(({ code }) => !said.includes(code)).map(({ sentence }) => sentence)];
   return html`
     <label class="choice ${blockers.length > 0 ? 'off' : ''}">
       <input type="radio" name="decision" value=${word} .checked=${isChosen} ?disabled=${blockers.length > 0 && !isChosen} @change=${choose}>
       <span><strong>${acts[word]}</strong>${shown.recommendation.decision === word ? html` <span class="badge">recommended</span>` : nothing}
-        ${blockers.map((/** @type {any} */ blocker) => html`<span class="soft small">${blocker.sentence}</span>`)}</span>
+        ${told.map((sentence) => html`<span class="soft small">${sentence}</span>`)}</span>
     </label>`;
 }
 
@@ -125,7 +134,7 @@ function whatIsSigned(shown, lot) {
       <dt>Under concession</dt><dd>${listOf(conceded)}</dd>
       <dt>Engine</dt><dd>version ${shown.engine}</dd>
       <dt>Rule</dt><dd class="small">${shown.rule.statement}</dd>
-      <dt>Recommendation</dt><dd>${shown.recommendation.decision === null ? '' : html`<strong>${capital(acts[/** @type {keyof typeof acts} */ (shown.recommendation.decision)])}.</strong> `}${shown.recommendation.sentence}</dd>
+      <dt>Recommendation</dt><dd>${shown.recommendation.decision === null ? '' : html`<strong>${capital(acts[/** @type {Word} */ (shown.recommendation.decision)])}.</strong> `}${shown.recommendation.sentence}</dd>
     </dl>`;
 }
 

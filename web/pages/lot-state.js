@@ -93,9 +93,12 @@ export function unitOfRun(units, runId) {
   return runId === null ? null : units.find((unit) => unit.conditions.some((/** @type {any} */ condition) => condition.runId === runId)) ?? null;
 }
 
-/** A worst criterion in one line: "passband at 3.2 kHz". @param {{ criterion: string, frequencyHz: number | null } | null} worst */
+/** A worst criterion in one line: "passband at 3.2 kHz"; one that names its frequency does so once. @param {{ criterion: string, frequencyHz: number | null } | null} worst */
 export function placeOf(worst) {
-  return worst === null ? '' : worst.frequencyHz === null ? worst.criterion : `${worst.criterion} at ${frequency(worst.frequencyHz)}`;
+  if (worst === null)
+    return '';
+  const at = frequency(worst.frequencyHz);
+  return worst.frequencyHz === null || worst.criterion.replaceAll(' ', '\u00a0').includes(at) ? worst.criterion : `${worst.criterion} at ${at}`;
 }
 
 /** @typedef {{ sentence: string, code: string }} Point */
