@@ -5,6 +5,7 @@ import { may } from './session.js';
 /** @type {readonly import('./router.js').Route[]} */
 export const routes = [
   { pattern: '/lots', tag: 'rl-page-lots', load: () => import('./pages/lots.js'), title: 'Lots' },
+  { pattern: '/lots/{id}', tag: 'rl-page-lot', load: () => import('./pages/lot.js'), title: 'Lot' },
   { pattern: '/benches', tag: 'rl-page-benches', load: () => import('./pages/benches.js'), title: 'Benches' },
   { pattern: '/benches/{id}', tag: 'rl-page-bench', load: () => import('./pages/bench.js'), title: 'Bench' },
   { pattern: '/people', tag: 'rl-page-people', load: () => import('./pages/people.js'), title: 'People', roles: may.manage },
