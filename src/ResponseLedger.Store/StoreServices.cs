@@ -13,9 +13,10 @@ public static class StoreServices
     /// <summary>Connections the server may hold at once, well under PostgreSQL's default limit of 100.</summary>
     public const int MaxPoolSize = 40;
 
-    // Together some 20 s: longer than a restart of the embedded PostgreSQL, shorter than a sender's patience.
-    private const int Retries = 6;
-    private static readonly TimeSpan LongestRetryDelay = TimeSpan.FromSeconds(5);
+    // Together some 20 s: longer than a restart of the embedded PostgreSQL, shorter than a sender's patience. The steps are short,
+    // so that whoever waits goes on soon after it is back.
+    private const int Retries = 20;
+    private static readonly TimeSpan LongestRetryDelay = TimeSpan.FromSeconds(1);
 
     private const string MigrationsAssembly = "ResponseLedger.Migrations";
 
@@ -40,7 +41,8 @@ public static class StoreServices
     public static DbContextOptionsBuilder Configure(DbContextOptionsBuilder options, NpgsqlDataSource dataSource)
         => options
             .UseNpgsql(dataSource, npgsql => npgsql.MigrationsAssembly(MigrationsAssembly).EnableRetryOnFailure(Retries, LongestRetryDelay, null).SetPostgresVersion(15, 0))
-            .UseSnakeCaseNamingConvention();
+            .UseSnakeCaseNamingConvention()
+            .AddInterceptors(BrokenConnection.Interceptor);
 
     internal static string Capped(string connectionString)
     {

@@ -72,11 +72,11 @@ export function openColumns(waiting) {
 export const decidedColumns = [
   lotColumn,
   deviceColumn,
-  { key: 'state', label: 'Decision', sort: (lot) => lotStates[lot.state]?.words, cell: (lot) => html`<rl-lot-state state=${lot.state}></rl-lot-state>` },
   unitsColumn,
   firstPassColumn,
   worstColumn,
   { key: 'signed', label: 'Signed', sort: (lot) => ageMs(lot.decision.signedAt), cell: ({ decision }) => html`${when(decision.signedAt)}<br><span class="soft small">${decision.signedBy.name}</span>` },
+  { key: 'state', label: 'Decision', sort: (lot) => lotStates[lot.state]?.words, cell: (lot) => html`<rl-lot-state state=${lot.state}></rl-lot-state>` },
 ];
 
 /** @param {string} time */

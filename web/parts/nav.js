@@ -20,7 +20,7 @@ const lab = [
   { href: '/checklist', words: 'Checklist', roles: may.manage },
 ];
 
-const themes = [['auto', 'As the system'], ['light', 'Light'], ['dark', 'Dark']];
+const themes = [['auto', 'System'], ['light', 'Light'], ['dark', 'Dark']];
 
 class Nav extends Element {
   static properties = { path: {}, placesOpen: { state: true }, personOpen: { state: true }, theme: { state: true } };

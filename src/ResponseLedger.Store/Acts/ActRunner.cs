@@ -1,3 +1,4 @@
+using System.Data;
 using Microsoft.EntityFrameworkCore;
 using Microsoft.EntityFrameworkCore.Storage;
 using Npgsql;
@@ -28,21 +29,34 @@ public sealed class ActRunner(IDbContextFactory<ResponseLedgerContext> contexts,
             {
                 await using var db = await contexts.CreateDbContextAsync(token);
                 await using var transaction = await db.Database.BeginTransactionAsync(token);
-                var attempt = new Act(db, actor, Microseconds.Cut(time.GetUtcNow()), time);
-                var value = await body(attempt, token);
-                if (attempt.Entries.Count == 0)
-                    throw new InvalidOperationException("An act records at least one ledger entry.");
+                var connection = (NpgsqlConnection)db.Database.GetDbConnection();
+                try
+                {
+                    db.HoldsTransaction = true;
+                    backend = connection.ProcessID;
+                    var attempt = new Act(db, actor, Microseconds.Cut(time.GetUtcNow()), time);
+                    var value = await body(attempt, token);
+                    if (attempt.Entries.Count == 0)
+                        throw new InvalidOperationException("An act records at least one ledger entry.");
 
-                db.LedgerEntries.AddRange(attempt.Entries);
-                db.LedgerQueue.AddRange(attempt.Entries.Select(e => new LedgerQueueRow { EntryId = e.Id }));
-                await db.SaveChangesAsync(token);
-                committing = attempt.Entries[0].Id;
-                backend = ((NpgsqlConnection)db.Database.GetDbConnection()).ProcessID;
-                outcome = value;
+                    db.LedgerEntries.AddRange(attempt.Entries);
+                    db.LedgerQueue.AddRange(attempt.Entries.Select(e => new LedgerQueueRow { EntryId = e.Id }));
+                    await db.SaveChangesAsync(token);
+                    committing = attempt.Entries[0].Id;
+                    outcome = value;
 
-                // From here the outcome may be unknown to us: the caller's cancellation must not blur it further.
-                await transaction.CommitAsync(CancellationToken.None);
-                return value;
+                    // From here the outcome may be unknown to us: the caller's cancellation must not blur it further.
+                    await transaction.CommitAsync(CancellationToken.None);
+                    return value;
+                }
+                catch (InvalidOperationException broken) when (connection.State != ConnectionState.Open)
+                {
+                    throw BrokenConnection.Told(broken);
+                }
+                finally
+                {
+                    db.HoldsTransaction = false;
+                }
             },
             async (_, body, token) =>
             {

@@ -23,6 +23,7 @@ internal sealed class UploadRoute(
             ? TypedResults.Problem(
                 "No file was taken; each is named with what is wrong and how to mend it.",
                 statusCode: answer.Status,
+                type: "about:blank",
                 extensions: new Dictionary<string, object?> { ["code"] = "nothingTaken", ["results"] = answer.Results })
             : TypedResults.Json(answer, statusCode: answer.Status);
     }
