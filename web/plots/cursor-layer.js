@@ -90,12 +90,13 @@ function paintCursor(context, panels, atHz, text, dots, theme) {
   const half = context.measureText(text).width / 2 + 6;
   const middle = Math.min(first.right - half, Math.max(first.left + half, x));
   const bottom = Math.max(...panels.map((panel) => panel.bottom));
+  const top = bottom + 4;
   context.fillStyle = theme.cursor;
-  context.fillRect(middle - half, bottom - theme.textPx - 8, 2 * half, theme.textPx + 8);
+  context.fillRect(middle - half, top, 2 * half, theme.textPx + 6);
   context.fillStyle = theme.ground;
   context.textAlign = 'center';
   context.textBaseline = 'middle';
-  context.fillText(text, middle, bottom - (theme.textPx + 8) / 2 + 0.5);
+  context.fillText(text, middle, top + (theme.textPx + 6) / 2 + 0.5);
 }
 
 /** @param {CanvasRenderingContext2D} context @param {DrawnBox} box @param {import('./plot-theme.js').PlotTheme} theme */

@@ -39,8 +39,8 @@ export class PlotChart {
       },
       plugins: [{
         id: 'panels',
-        beforeDatasetsDraw: (chart) => painters.under(chart.ctx, this.panels()),
-        afterDatasetsDraw: (chart) => painters.over(chart.ctx, this.panels()),
+        beforeDatasetsDraw: (chart) => painters.under(chart.ctx, panelsOf(chart)),
+        afterDatasetsDraw: (chart) => painters.over(chart.ctx, panelsOf(chart)),
         afterDraw: onLayout,
       }],
     });
@@ -70,22 +70,9 @@ export class PlotChart {
     this.#chart.draw();
   }
 
-  /** The panels as they were last laid out. @returns {ChartPanel[]} */
-  panels() {
-    const x = this.#chart.scales.x;
-    if (x === undefined) return [];
-    const frequency = { min: x.min, max: x.max };
-    return (/** @type {PanelKey[]} */ (['upper', 'lower'])).filter((key) => this.#chart.scales[key] !== undefined).map((key) => {
-      const y = this.#chart.scales[key];
-      const values = { min: y.min, max: y.max };
-      return {
-        key, frequency, values, left: x.left, right: x.right, top: y.top, bottom: y.bottom,
-        x: (frequencyHz) => x.left + placeOf(logAxis, frequency, frequencyHz) * (x.right - x.left),
-        y: (value) => y.bottom - placeOf(straightAxis, values, value) * (y.bottom - y.top),
-        frequencyAt: (pixel) => valueAtPlace(logAxis, frequency, (pixel - x.left) / (x.right - x.left)),
-        valueAt: (pixel) => valueAtPlace(straightAxis, values, (y.bottom - pixel) / (y.bottom - y.top)),
-      };
-    });
+  /** The panels as they were last laid out. */
+  get panels() {
+    return panelsOf(this.#chart);
   }
 
   get pixelRatio() {
@@ -111,6 +98,21 @@ export class PlotChart {
 
     return points;
   }
+}
+
+/** @param {any} chart @returns {ChartPanel[]} */
+function panelsOf({ scales: { x, ...others } }) {
+  return (/** @type {PanelKey[]} */ (['upper', 'lower'])).filter((key) => others[key] !== undefined).map((key) => {
+    const y = others[key];
+    const [frequency, values] = [{ min: x.min, max: x.max }, { min: y.min, max: y.max }];
+    return {
+      key, frequency, values, left: x.left, right: x.right, top: y.top, bottom: y.bottom,
+      x: (frequencyHz) => x.left + placeOf(logAxis, frequency, frequencyHz) * (x.right - x.left),
+      y: (value) => y.bottom - placeOf(straightAxis, values, value) * (y.bottom - y.top),
+      frequencyAt: (pixel) => valueAtPlace(logAxis, frequency, (pixel - x.left) / (x.right - x.left)),
+      valueAt: (pixel) => valueAtPlace(straightAxis, values, (y.bottom - pixel) / (y.bottom - y.top)),
+    };
+  });
 }
 
 /** @param {PlotTheme} theme */

@@ -1,8 +1,9 @@
 // What is painted in a panel beside the lines of runs: forbidden areas, the fan of percentiles, limits and names.
 
-import { forbiddenAreas, limitLines, namePlace } from './limit-area.js';
+import { valueAt } from './curve.js';
+import { forbiddenAreas, limitAt, limitLines, namePlace } from './limit-area.js';
 
-/** @typedef {import('./limit-area.js').Panel} Panel */
+/** @typedef {import('./plot-chart.js').ChartPanel} Panel */
 /** @typedef {import('./trace-set.js').Limit} Limit */
 /** @typedef {import('./plot-theme.js').PlotTheme} PlotTheme */
 /** @typedef {CanvasRenderingContext2D} Context */
@@ -78,7 +79,7 @@ export function paintFan(context, panel, frequencyHz, percentiles, theme) {
       context.closePath();
     }
 
-    context.globalAlpha = 0.2;
+    context.globalAlpha = 0.16;
     context.fillStyle = theme.cursor;
     context.fill();
     context.globalAlpha = 1;
@@ -112,21 +113,23 @@ export function strokeCurve(context, x, values, panel) {
 }
 
 /**
- * A curve's name beside its line, where it is in view.
- * @param {Context} context @param {Panel} panel @param {Float64Array} frequencyHz @param {Float64Array} values @param {string} name
- * @param {{colour: string, share: number}} look `share`: how far along the panel @param {PlotTheme} theme
+ * A curve's name beside its line, where it is in view and no limit runs through the name.
+ * @param {Context} context @param {Panel} panel @param {{frequencyHz: Float64Array, values: Float64Array, name: string, colour: string}} curve
+ * @param {Limit[]} limits @param {PlotTheme} theme
  */
-export function paintName(context, panel, frequencyHz, values, name, { colour, share }, theme) {
+export function paintName(context, panel, { frequencyHz, values, name, colour }, limits, theme) {
   context.font = `600 ${theme.textPx}px ${theme.face}`;
   const half = context.measureText(name).width / 2 + 6;
-  const at = [share, 0.15, 0.5, 0.85].map((s) => Math.min(panel.right - half, Math.max(panel.left + half, panel.left + s * (panel.right - panel.left))));
-  for (const x of at) {
-    const i = firstAtOrAfter(frequencyHz, panel, x);
-    const y = i < 0 ? NaN : panel.y(values[i]);
+  const tall = theme.textPx / 2 + 2;
+  const isFree = (/** @type {number} */ x, /** @type {number} */ y) => y - tall > panel.top && y + tall < panel.bottom
+    && limits.every((limit) => [x - half, x, x + half].every((at) => !(Math.abs(panel.y(limitAt(limit, panel.frequencyAt(at))) - y) < tall)));
+  for (const share of [0.06, 0.3, 0.5, 0.7, 0.94]) {
+    const x = Math.min(panel.right - half, Math.max(panel.left + half, panel.left + share * (panel.right - panel.left)));
+    const y = panel.y(valueAt(frequencyHz, values, panel.frequencyAt(x)));
     if (!(y > panel.top && y < panel.bottom)) continue;
-    const above = y - panel.top > 2 * theme.textPx;
-    write(context, name, x, y + (above ? -1 : 1) * (theme.textPx - 1), colour, theme.ground);
-    return;
+    for (const off of [-theme.textPx, theme.textPx]) {
+      if (isFree(x, y + off)) return write(context, name, x, y + off, colour, theme.ground);
+    }
   }
 }
 
@@ -141,11 +144,6 @@ export function write(context, text, x, y, colour, ground) {
   context.strokeText(text, x, y);
   context.fillStyle = colour;
   context.fillText(text, x, y);
-}
-
-/** @param {Float64Array} frequencyHz @param {Panel} panel @param {number} x */
-function firstAtOrAfter(frequencyHz, panel, x) {
-  return frequencyHz.findIndex((f) => panel.x(f) >= x);
 }
 
 /** @param {Float64Array} values @returns {[number, number][]} stretches from..to-1 without an absent value */

@@ -2,7 +2,7 @@
 // Pure; what did not change between two models is the same object in both.
 
 import { onBasis } from './bases.js';
-import { backgroundGroups, namedRuns } from './named-runs.js';
+import { backgroundGroups, isOdd, namedRuns } from './named-runs.js';
 import { traceSetOf } from './trace-set.js';
 import { spanOf } from './value-span.js';
 
@@ -11,7 +11,7 @@ import { spanOf } from './value-span.js';
 /** @typedef {import('./trace-set.js').Overlay} Overlay */
 /** @typedef {'upper' | 'lower'} PanelKey */
 /** @typedef {{key: PanelKey, set: TraceSet, span: Span, groups: Uint8Array}} PanelModel */
-/** @typedef {{panels: PanelModel[], frequency: Span, named: import('./named-runs.js').NamedRun[], notes: string[], count: number, background: number}} PlotModel */
+/** @typedef {{panels: PanelModel[], frequency: Span, named: import('./named-runs.js').NamedRun[], notes: string[], count: number, background: number, odd: number}} PlotModel */
 /** @typedef {{upper: Overlay | null, lower: Overlay | null, basis: import('./bases.js').Basis, levelHz: number, chosen: string[] | null}} PlotQuestion */
 
 /**
@@ -41,6 +41,7 @@ export function plotModel({ upper, lower, basis, levelHz, chosen }) {
     notes: [...notes],
     count: runs.length,
     background: runs.length - named.length,
+    odd: runs.filter(isOdd).length,
   };
 }
 
@@ -69,8 +70,8 @@ const longest = (lists) => lists.reduce((best, list) => (list.length > best.leng
  * @param {{quantityWord: (set: TraceSet) => string, frequencyText: (frequencyHz: number) => string, outcomeWord: (outcome: string | null) => string}} words
  */
 export function describe(model, { quantityWord, frequencyText, outcomeWord }) {
-  const { panels, frequency, named, count } = model;
-  const what = panels.map(({ set }) => quantityWord(set)).join(' and ');
+  const { panels, frequency, named, count, odd } = model;
+  const what = panels.map(({ set }, i) => (i === 0 ? quantityWord(set) : quantityWord(set).toLowerCase())).join(' and ');
   const golden = panels[0].set.golden;
   const limits = panels.reduce((sum, { set }) => sum + set.limits.length, 0);
   const parts = [
@@ -78,7 +79,8 @@ export function describe(model, { quantityWord, frequencyText, outcomeWord }) {
     golden ? `golden run ${golden.serial}` : 'no golden run',
     limits === 0 ? 'no limits' : limits === 1 ? 'one limit' : `${limits} limits`,
   ];
-  const odd = named.filter(({ run }) => run.outcome !== null && run.outcome !== 'pass');
-  const oddWords = odd.map(({ run }) => `${run.serial} ${outcomeWord(run.outcome)}`);
+  const told = named.filter(({ run }) => isOdd(run));
+  const oddWords = told.map(({ run }) => `${run.serial} ${outcomeWord(run.outcome)}`);
+  if (odd > told.length) oddWords.push(`${odd - told.length} more do not pass`);
   return `${parts.join(', ')}.${oddWords.length > 0 ? ` ${oddWords.join(', ')}.` : ''}`;
 }

@@ -14,7 +14,7 @@ const gain = (count = 3, more = {}) => ({
 });
 const phase = (more = {}) => ({ quantity: 'phase', frequencyHz: [5, 1000], runs: [{ runId: 'r0', serial: 'S0', values: [0, -90] }], ...more });
 const question = (more = {}) => ({ upper: gain(), lower: null, basis: 'asMeasured', levelHz: 100, chosen: null, ...more });
-const words = { quantityWord: (set) => (set.quantity === 'gain' ? 'Gain' : 'phase'), frequencyText: (f) => `${f} Hz`, outcomeWord };
+const words = { quantityWord: (set) => (set.quantity === 'gain' ? 'Gain' : 'Phase'), frequencyText: (f) => `${f} Hz`, outcomeWord };
 
 test('without an overlay there is nothing to show', () => {
   assert.equal(plotModel(question({ upper: null })), null);
@@ -63,4 +63,10 @@ test('what could not come along is noted once', () => {
 test('the description names what is shown and who does not pass', () => {
   assert.equal(describe(plotModel(question({ lower: phase() })), words), 'Gain and phase of 3 runs from 5 Hz to 1000 Hz, golden run G7, one limit. S1 fails.');
   assert.equal(describe(plotModel(question({ upper: gain(1, { golden: null, limits: [] }) })), words), 'Gain of S0 from 10 Hz to 1000 Hz, no golden run, no limits.');
+});
+
+test('those who do not pass and have no name are counted', () => {
+  const many = gain(30);
+  many.runs.forEach((run, i) => { if (i < 11) run.outcome = 'fail'; });
+  assert.match(describe(plotModel(question({ upper: many })), words), /S7 fails, 3 more do not pass\.$/);
 });

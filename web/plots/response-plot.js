@@ -1,0 +1,392 @@
+// Gain above phase (or delay) of many runs on one log frequency axis:
+//
+//   <rl-response-plot .upper=${gain} .lower=${phase} .highlight=${runId} .view=${parseView(query.get('view'))} caption="…"
+//     @cursor=${…} @run-hover=${…} @run-pick=${…} @view=${…} @basis=${…}></rl-response-plot>
+//
+// upper, lower  overlays as GET /api/lots/{id}/overlay answers them, or as trace-set.js makes them of traces; either may be null
+// chosen        ids of the runs that get a line and a name of their own; null leaves it to their outcomes
+// highlight     id of a run to raise, or null
+// basis         asMeasured, minusGolden or levelled; levelHz: where. Give overlays as measured; others are shown as they are
+// view          what is in view, as plot-view.js prints and parses it
+// cursorHz      where the frequency cursor stands
+//
+// Events: cursor { frequencyHz, golden, runs, read(runIds) } with values and margins there; run-hover { runId } or null;
+// run-pick { runId }; view { view, text } once it rests; basis { basis, levelHz }.
+
+import { frequency, parseNumber } from '../numbers.js';
+import { Element, html, nothing, ownStyles, uniqueId } from '../parts/element.js';
+import { inside, sliderFrequency, stepped } from './cursor-steps.js';
+import { attachGestures, panelAt } from './plot-gestures.js';
+import { intentOf } from './plot-keys.js';
+import { describe, plotModel } from './plot-model.js';
+import { PlotPicture } from './plot-picture.js';
+import { cursorOf, toolsOf } from './plot-controls.js';
+import { legendOf, tableOf } from './plot-readout.js';
+import { isWhole, printView, wholeView } from './plot-view.js';
+import { cursorSentence, quantityWord } from './plot-words.js';
+import { outcomeWord } from './named-runs.js';
+import { nearestRun, neighbourRun } from './nearest-run.js';
+import { sharedPainter } from './run-painter.js';
+import { valueAt } from './curve.js';
+import { goldenReadings, runReadings, spreadAt } from './readings.js';
+import { logAxis, moved, placeOf, sameSpan, straightAxis, within, zoomed } from './spans.js';
+import { spanOf } from './value-span.js';
+
+/** @typedef {import('./spans.js').Span} Span */
+/** @typedef {import('./plot-model.js').PlotModel} PlotModel */
+/** @typedef {import('./plot-gestures.js').Place} Place */
+
+// The worker starts while the page still asks for its data.
+sharedPainter();
+await ownStyles(import.meta.url);
+
+const reachPx = 9;
+const leastShare = 1e-3;
+const calmMs = 150;
+
+export class ResponsePlot extends Element {
+  static properties = {
+    upper: { attribute: false }, lower: { attribute: false }, chosen: { attribute: false }, highlight: { attribute: false },
+    basis: {}, levelHz: { attribute: false }, view: { attribute: false }, cursorHz: { attribute: false }, caption: {},
+    switchedOff: { state: true }, hovered: { state: true }, problems: { state: true }, said: { state: true }, hasPercentiles: { state: true }, open: { state: true },
+  };
+
+  /** @type {PlotModel | null} */
+  #model = null;
+  /** @type {PlotPicture | null} */
+  #picture = null;
+  /** @type {() => void} */
+  #detach = () => {};
+  /** @type {Place | null | undefined} */
+  #pointed;
+  #frame = 0;
+  #calm = 0;
+  #id = uniqueId('plot');
+
+  constructor() {
+    super();
+    /** @type {import('./trace-set.js').Overlay | null} */
+    this.upper = null;
+    /** @type {import('./trace-set.js').Overlay | null} */
+    this.lower = null;
+    /** @type {string[] | null} */
+    this.chosen = null;
+    /** @type {string | null} */
+    this.highlight = null;
+    /** @type {import('./bases.js').Basis} */
+    this.basis = 'asMeasured';
+    /** @type {number | null} */
+    this.levelHz = null;
+    /** @type {import('./plot-view.js').PlotView} */
+    this.view = wholeView;
+    /** @type {number | null} */
+    this.cursorHz = null;
+    this.caption = '';
+    /** @type {ReadonlySet<string>} what the legend has switched off */
+    this.switchedOff = new Set();
+    /** @type {string | null} */
+    this.hovered = null;
+    this.problems = { cursor: '', level: '' };
+    this.said = '';
+    this.hasPercentiles = false;
+    this.open = false;
+  }
+
+  /** The run that is raised over the others. */
+  get raisedRunId() {
+    return this.hovered ?? this.highlight;
+  }
+
+  /** Whether the background is drawn for what is in view, and not a preview of it. */
+  get isSharp() {
+    return this.#picture?.isSharp ?? true;
+  }
+
+  get levelFrequencyHz() {
+    return this.levelHz ?? this.#atHz;
+  }
+
+  get #atHz() {
+    const whole = this.#model?.frequency ?? { min: 1, max: 1 };
+    return inside(whole, this.cursorHz ?? Math.sqrt(whole.min * whole.max));
+  }
+
+  /** Where the cursor stands, and what is in view of the frequencies. @returns {Span} */
+  get #frequency() {
+    const whole = this.#model?.frequency ?? { min: 1, max: 10 };
+    return this.view.frequency === null ? whole : within(logAxis, this.view.frequency, whole, leastShare);
+  }
+
+  disconnectedCallback() {
+    super.disconnectedCallback();
+    cancelAnimationFrame(this.#frame);
+    clearTimeout(this.#calm);
+    this.#dropPicture();
+  }
+
+  connectedCallback() {
+    super.connectedCallback();
+    this.requestUpdate();
+  }
+
+  /** @param {Map<string, unknown>} changed */
+  willUpdate(changed) {
+    const fresh = this.#model === null || ['upper', 'lower', 'basis', 'chosen'].some((name) => changed.has(name));
+    if (fresh || (this.basis === 'levelled' && (changed.has('levelHz') || (this.levelHz === null && changed.has('cursorHz'))))) {
+      this.#model = plotModel({ upper: this.upper, lower: this.lower, basis: this.basis, levelHz: this.basis === 'levelled' ? this.levelFrequencyHz : NaN, chosen: this.chosen });
+    }
+  }
+
+  render() {
+    const model = this.#model;
+    if (model === null) return html`<p class="soft">There is no curve to show.</p>`;
+    const description = describe(model, { quantityWord, frequencyText: frequency, outcomeWord });
+    const sets = model.panels.map(({ set }) => set);
+    const sentence = cursorSentence(this.#atHz, sets, goldenReadings(sets, this.#atHz), sets.map((set) => spreadAt(set, this.#atHz).worst));
+    return html`
+      <figure class="plot">
+        <figcaption>${this.caption || description}</figcaption>
+        ${toolsOf(this, { id: this.#id, hasGolden: sets.some((set) => set.golden !== null), isWhole: isWhole(this.view) })}
+        <div class="plot-surface" role="group" tabindex="0" aria-label="Plot" aria-describedby="${this.#id}-keys" @keydown=${this.onKey}>
+          <div class="plot-frame"><canvas role="img" aria-label=${description}></canvas></div>
+          <canvas class="plot-over" aria-hidden="true"></canvas>
+        </div>
+        ${cursorOf(this, { id: this.#id, span: this.#frequency, atHz: this.#atHz, sentence })}
+        ${legendOf(this, model, this.#atHz)}
+        ${model.notes.map((note) => html`<p class="plot-note">${note}</p>`)}
+        <details class="plot-values" @toggle=${(/** @type {Event} */ event) => { this.open = /** @type {HTMLDetailsElement} */ (event.target).open; }}>
+          <summary>All values at ${frequency(this.#atHz)}</summary>
+          ${this.open ? tableOf(model, this.#atHz, this.raisedRunId) : nothing}
+        </details>
+        <details class="plot-help">
+          <summary>Keys and pointer</summary>
+          <p id="${this.#id}-keys">With the plot in focus: left and right move the cursor, up and down walk through the runs, Enter picks one. Plus and minus zoom, Shift with an arrow moves the view, 0 shows the whole sweep. With a pointer: drag a box to zoom, Shift and drag to move, turn the wheel to zoom once the plot has the focus, double-click for the whole sweep. Two fingers zoom and move.</p>
+        </details>
+        <p class="unseen" role="status">${this.said}</p>
+      </figure>`;
+  }
+
+  updated() {
+    const model = this.#model;
+    if (model === null) return this.#dropPicture();
+    if (this.#picture === null) this.#makePicture();
+    this.#picture?.show({
+      model, basisHz: this.levelFrequencyHz, frequency: this.#frequency, hidden: this.switchedOff,
+      values: Object.fromEntries(model.panels.map((panel) => [panel.key, this.#valuesOf(panel)])),
+      atHz: this.#atHz, cursorText: frequency(this.#atHz), raised: this.raisedRunId,
+    });
+  }
+
+  /** @param {import('./bases.js').Basis} basis */
+  chooseBasis(basis) {
+    if (basis === 'levelled') this.levelHz ??= this.#atHz;
+    this.basis = basis;
+    this.view = { ...this.view, upper: null, lower: null };
+    this.tell('basis', { basis, levelHz: basis === 'levelled' ? this.levelFrequencyHz : null });
+  }
+
+  /** Zooms about the cursor, or about the middle where the cursor is out of view. @param {number} factor */
+  zoomBy(factor) {
+    const place = placeOf(logAxis, this.#frequency, this.#atHz);
+    this.changeView({ frequency: zoomed(logAxis, this.#frequency, factor, place >= 0 && place <= 1 ? place : 0.5) });
+  }
+
+  /** @param {number} frequencyShare @param {number} valueShare of what is in view */
+  moveBy(frequencyShare, valueShare) {
+    this.changeView({
+      frequency: frequencyShare === 0 ? undefined : moved(logAxis, this.#frequency, frequencyShare),
+      values: valueShare === 0 ? [] : (this.#model?.panels ?? []).map((panel) => ({ key: panel.key, span: moved(straightAxis, this.#valuesOf(panel), valueShare) })),
+    });
+  }
+
+  fitValues() {
+    this.changeView({ values: (this.#model?.panels ?? []).map(({ key, set }) => ({ key, span: spanOf(set, this.#frequency) })) });
+  }
+
+  showWhole() {
+    this.view = wholeView;
+    this.#tellView();
+  }
+
+  /** @param {import('./plot-gestures.js').ViewChange} change */
+  changeView({ frequency: span, values = [] }) {
+    const model = this.#model;
+    if (model === null) return;
+    const view = { ...this.view };
+    if (span) {
+      const kept = within(logAxis, span, model.frequency, leastShare);
+      view.frequency = sameSpan(kept, model.frequency) ? null : kept;
+    }
+
+    for (const { key, span: wanted } of values) {
+      const panel = model.panels.find((one) => one.key === key);
+      if (panel === undefined) continue;
+      const kept = within(straightAxis, wanted, zoomed(straightAxis, panel.span, 3), leastShare);
+      view[key] = sameSpan(kept, panel.span) ? null : kept;
+    }
+
+    this.view = view;
+    this.#tellView();
+  }
+
+  /** @param {string} key a run's id, or golden, background, percentiles, limits */
+  toggle(key) {
+    const hidden = new Set(this.switchedOff);
+    if (!hidden.delete(key)) hidden.add(key);
+    this.switchedOff = hidden;
+  }
+
+  /** @param {string | null} runId */
+  hover(runId) {
+    if (runId === this.hovered) return;
+    this.hovered = runId;
+    this.tell('run-hover', runId === null ? null : { runId });
+  }
+
+  /** @param {number} place */
+  slideTo(place) {
+    this.#moveCursor(sliderFrequency(this.#frequency, place, this.#atHz, this.#gridHz));
+  }
+
+  /** @param {string} typed */
+  typeCursor(typed) {
+    const atHz = this.#typedFrequency(typed, 'cursor');
+    if (atHz === null) return;
+    if (atHz < this.#frequency.min || atHz > this.#frequency.max) this.showWhole();
+    this.#moveCursor(atHz);
+  }
+
+  /** @param {string} typed */
+  typeLevel(typed) {
+    const atHz = this.#typedFrequency(typed, 'level');
+    if (atHz === null) return;
+    this.levelHz = atHz;
+    this.tell('basis', { basis: this.basis, levelHz: atHz });
+  }
+
+  /** @param {KeyboardEvent} event */
+  onKey(event) {
+    const intent = intentOf(event);
+    if (intent === null || event.target !== event.currentTarget) return;
+    event.preventDefault();
+    if (intent.kind === 'cursor') this.#moveCursor(inside(this.#frequency, stepped(this.#gridHz, this.#atHz, intent.points)));
+    else if (intent.kind === 'cursorEnd') this.#moveCursor(this.#frequency[intent.end]);
+    else if (intent.kind === 'run') this.#walk(intent.step);
+    else if (intent.kind === 'pick') this.#pickRaised();
+    else if (intent.kind === 'zoom') this.zoomBy(intent.factor);
+    else if (intent.kind === 'move') this.moveBy(intent.frequency, intent.values);
+    else this.showWhole();
+    if (intent.kind === 'cursor' || intent.kind === 'cursorEnd' || intent.kind === 'run') this.#say();
+  }
+
+  get #gridHz() {
+    return this.#model?.panels[0].set.frequencyHz ?? new Float64Array(0);
+  }
+
+  /** @param {import('./plot-model.js').PanelModel} panel @returns {Span} */
+  #valuesOf({ key, span }) {
+    return this.view[key] ?? span;
+  }
+
+  /** @param {string} typed @param {'cursor' | 'level'} field */
+  #typedFrequency(typed, field) {
+    const { min, max } = this.#model?.frequency ?? { min: 0, max: Infinity };
+    const { value, problem } = parseNumber(typed, 'Hz');
+    const outside = value !== null && (value < min || value > max) ? `The sweep runs from ${frequency(min)} to ${frequency(max)}.` : '';
+    this.problems = { ...this.problems, [field]: problem || outside };
+    return problem || outside ? null : value;
+  }
+
+  /** @param {number} atHz */
+  #moveCursor(atHz) {
+    if (atHz === this.cursorHz || this.#model === null) return;
+    this.cursorHz = atHz;
+    if (this.problems.cursor !== '') this.problems = { ...this.problems, cursor: '' };
+    const sets = this.#model.panels.map(({ set }) => set);
+    const read = (/** @type {string[]} */ runIds) => runReadings(sets, atHz, runIds);
+    this.tell('cursor', { frequencyHz: atHz, golden: goldenReadings(sets, atHz), runs: read(this.#model.named.map(({ run }) => run.runId)), read });
+  }
+
+  /** @param {1 | -1} step */
+  #walk(step) {
+    const panel = this.#model?.panels[0];
+    if (panel === undefined) return;
+    const next = neighbourRun(this.#candidates(panel), (values) => valueAt(panel.set.frequencyHz, values, this.#atHz), this.raisedRunId, step);
+    if (next !== null) this.hover(next.runId);
+  }
+
+  #pickRaised() {
+    if (this.raisedRunId !== null) this.tell('run-pick', { runId: this.raisedRunId });
+  }
+
+  /** The curves of a panel that can be pointed at. @param {import('./plot-model.js').PanelModel} panel */
+  #candidates({ set, groups }) {
+    return set.runs.filter((run, i) => !this.switchedOff.has(groups[i] === 255 ? run.runId : 'background'));
+  }
+
+  /** @param {Place | null} place */
+  #point(place) {
+    this.#pointed = place;
+    if (this.#frame === 0) this.#frame = requestAnimationFrame(() => this.#follow());
+  }
+
+  #follow() {
+    this.#frame = 0;
+    const place = this.#pointed;
+    if (place === undefined) return;
+    this.hover(place === null ? null : this.#runUnder(place));
+    const panel = place && panelAt(this.#picture?.panels ?? [], place.y);
+    if (place && panel && place.x >= panel.left && place.x <= panel.right) this.#moveCursor(inside(this.#frequency, panel.frequencyAt(place.x)));
+  }
+
+  /** @param {Place} place */
+  #runUnder(place) {
+    const laid = panelAt(this.#picture?.panels ?? [], place.y);
+    const panel = this.#model?.panels.find(({ key }) => key === laid?.key);
+    if (!laid || !panel || place.x < laid.left || place.x > laid.right) return null;
+    return nearestRun(this.#candidates(panel), panel.set.frequencyHz, laid, laid.frequencyAt, place, reachPx)?.curve.runId ?? null;
+  }
+
+  #say() {
+    const sets = this.#model?.panels.map(({ set }) => set) ?? [];
+    const [raised] = this.raisedRunId === null ? [] : runReadings(sets, this.#atHz, [this.raisedRunId]);
+    const worst = sets.map((_, i) => (raised?.readings[i]?.margin ? { serial: raised.serial, ...raised.readings[i].margin } : null));
+    this.said = raised ? `${raised.serial} ${outcomeWord(raised.outcome)}. ${cursorSentence(this.#atHz, sets, raised.readings, worst).replace('golden run', 'reads')}`
+      : cursorSentence(this.#atHz, sets, goldenReadings(sets, this.#atHz), sets.map((set) => spreadAt(set, this.#atHz).worst));
+  }
+
+  #tellView() {
+    clearTimeout(this.#calm);
+    this.#calm = window.setTimeout(() => this.tell('view', { view: this.view, text: printView(this.view) }), calmMs);
+  }
+
+  #makePicture() {
+    const surface = this.querySelector('.plot-surface');
+    const [canvas, over] = this.querySelectorAll('canvas');
+    if (!(surface instanceof HTMLElement)) return;
+    this.#picture = new PlotPicture(this, canvas, over, () => {
+      this.hasPercentiles = this.#picture?.hasPercentiles ?? false;
+    });
+    this.#detach = attachGestures(surface, {
+      panels: () => this.#picture?.panels ?? [],
+      point: (place) => this.#point(place),
+      pick: (place) => {
+        this.#pointed = place;
+        this.#follow();
+        this.#pickRaised();
+      },
+      drawBox: (box) => this.#picture?.drawBox(box),
+      change: (change) => this.changeView(change),
+      whole: () => this.showWhole(),
+    });
+  }
+
+  #dropPicture() {
+    this.#detach();
+    this.#detach = () => {};
+    this.#picture?.destroy();
+    this.#picture = null;
+  }
+}
+
+customElements.define('rl-response-plot', ResponsePlot);
