@@ -1,7 +1,10 @@
 // The table of pages: an address, the element that shows it, and who may see it. DEVELOPERS.md says how a page is added.
 
+import { may } from './session.js';
+
 /** @type {readonly import('./router.js').Route[]} */
 export const routes = [
   { pattern: '/lots', tag: 'rl-page-lots', load: () => import('./pages/lots.js'), title: 'Lots' },
+  { pattern: '/send', tag: 'rl-page-send', load: () => import('./pages/send.js'), title: 'Send files', roles: may.operate },
   { pattern: '/password', tag: 'rl-page-password', load: () => import('./pages/password.js'), title: 'Change password' },
 ];

@@ -1,0 +1,480 @@
+// Sending files: what was dropped or picked is looked at before anything is stored, asked about where it is open, and then sent.
+
+import { all } from '../api.js';
+import { confirm, ends, openDialog } from '../parts/dialog.js';
+import { Page, html, nothing, ownStyles } from '../parts/element.js';
+import { incoming } from '../parts/incoming.js';
+import { say } from '../parts/notice.js';
+import { several } from '../numbers.js';
+import { keepInAddress, oneOf, printState, readState, text } from '../router.js';
+import { may, session } from '../session.js';
+import { makeLot } from './lots-open.js';
+import { batch } from './send-batch.js';
+import { askColumns, askSameBytes } from './send-questions.js';
+import { counted, groupOf, headsOf, isOpen, lacking, openGroups, outcomeSentence, placeOf, purposes, repeated, stageOf } from './send-rows.js';
+import { fileColumns } from './send-table.js';
+import '../parts/busy.js';
+import '../parts/data-table.js';
+import '../parts/refusal.js';
+import './send-look.js';
+import './send-make.js';
+import './send-place.js';
+
+/** @typedef {import('./send-rows.js').Row} Row */
+/** @typedef {import('./send-rows.js').Group} Group */
+
+await ownStyles(import.meta.url);
+
+const pageRows = 50;
+const benchKey = 'responseledger-bench';
+const shape = { device: text(), lot: text(), condition: text(), bench: text(), purpose: oneOf(purposes) };
+
+/** @type {readonly (readonly [Group, string])[]} */
+const groupWords = [['all', 'All'], ['asks', 'Ask you'], ['refused', 'Refused'], ['reading', 'Being read'], ['ready', 'Ready'], ['underWay', 'Under way'], ['sent', 'Taken']];
+
+class SendPage extends Page {
+  static properties = {
+    devices: { state: true }, lots: { state: true }, refusal: { state: true }, group: { state: true }, from: { state: true }, tried: { state: true }, making: { state: true }, limits: { state: true },
+  };
+
+  constructor() {
+    super();
+    /** @type {any[] | null} */
+    this.devices = null;
+    /** @type {Map<string, any[]>} open lots by device */
+    this.lots = new Map();
+    /** @type {import('../api.js').Answer | null} */
+    this.refusal = null;
+    /** @type {Group} */
+    this.group = 'all';
+    this.from = 0;
+    /** Whether somebody tried to send, so that what is missing is marked. */
+    this.tried = false;
+    /** Whether device, mask and lot are being made from the file. */
+    this.making = false;
+    /** @type {any[]} */
+    this.limits = [];
+    /** @type {(() => void) | null} */
+    this.updateLook = null;
+    this.onBatch = () => {
+      this.requestUpdate();
+      this.updateLook?.();
+      this.watchSending();
+    };
+    this.onIncoming = () => this.take(incoming.take());
+    this.wasSending = batch.sending.length > 0;
+  }
+
+  connectedCallback() {
+    super.connectedCallback();
+    batch.addEventListener('change', this.onBatch);
+    incoming.addEventListener('files', this.onIncoming);
+    this.placeFromAddress();
+    this.onIncoming();
+    void this.load();
+  }
+
+  disconnectedCallback() {
+    super.disconnectedCallback();
+    batch.removeEventListener('change', this.onBatch);
+    incoming.removeEventListener('files', this.onIncoming);
+  }
+
+  placeFromAddress() {
+    const given = readState(shape, this.query);
+    const named = this.query.has('device') || this.query.has('lot');
+    const bench = given.bench || batch.place.bench || keptBench();
+    batch.placeAt(named || batch.rows.length === 0
+      ? { deviceId: given.device, lotId: given.lot, conditionId: given.condition, purpose: given.purpose, bench }
+      : { bench });
+  }
+
+  async load() {
+    const { signal } = this.leaving;
+    const [devices, benches] = await Promise.all([all('/api/devices?limit=200', { signal }), all('/api/benches?limit=500', { signal })]);
+    this.refusal = [devices, benches].find((answer) => !answer.ok && answer.code !== 'stopped') ?? null;
+    if (!devices.ok || !benches.ok)
+      return;
+    this.devices = devices.items;
+    batch.knowBenches(benches.items);
+    this.settlePlace();
+    await this.loadLots(batch.place.deviceId);
+  }
+
+  /** A device that is not there is not chosen; one alone is. */
+  settlePlace() {
+    const devices = this.devices ?? [];
+    if (batch.place.deviceId !== '' && !devices.some(({ id }) => id === batch.place.deviceId))
+      batch.placeAt({ deviceId: '', lotId: '', conditionId: '' });
+    if (batch.place.deviceId === '' && devices.length === 1)
+      batch.placeAt({ deviceId: devices[0].id });
+    const first = this.deviceOf(batch.place.deviceId)?.conditions[0];
+    if (first !== undefined && first.id === batch.place.conditionId)
+      batch.placeAt({ conditionId: '' });
+  }
+
+  /** @param {string} deviceId */
+  async loadLots(deviceId) {
+    if (deviceId === '' || this.lots.has(deviceId))
+      return;
+    const answer = await all(`/api/lots?state=open&limit=200&device=${encodeURIComponent(deviceId)}`, { signal: this.leaving.signal });
+    if (!answer.ok) {
+      this.refusal = answer.code === 'stopped' ? this.refusal : answer;
+      return;
+    }
+
+    this.lots = new Map([...this.lots, [deviceId, answer.items]]);
+    const { lotId } = batch.place;
+    if (deviceId === batch.place.deviceId && lotId !== '' && !answer.items.some(({ id }) => id === lotId)) {
+      batch.placeAt({ lotId: '' });
+      say('The lot that the address names is not open: it takes no runs. Choose another one, or have it reopened.', { bad: true });
+    }
+  }
+
+  /** @param {readonly File[]} files */
+  take(files) {
+    if (files.length === 0)
+      return;
+    const known = batch.add(files);
+    if (known > 0)
+      say(`${several(known, 'file is', 'files are')} in the table already.`);
+  }
+
+  /** @param {string} deviceId */
+  deviceOf(deviceId) {
+    return this.devices?.find(({ id }) => id === deviceId);
+  }
+
+  /** @param {string} lotId */
+  lotOf(lotId) {
+    return [...this.lots.values()].flat().find(({ id }) => id === lotId);
+  }
+
+  render() {
+    const rows = batch.rows;
+    const picker = html`
+      <label class="button ${rows.length === 0 ? 'main' : ''} picker">${rows.length === 0 ? 'Pick files' : 'Add files'}<input class="unseen" type="file" multiple @change=${this.onPicked}></label>`;
+    return html`
+      <div class="page-head"><h1>Send files</h1>${rows.length === 0 ? nothing : html`<div class="row">${picker}<button type="button" @click=${this.clear}>Clear the table</button></div>`}</div>
+      <rl-refusal .answer=${this.refusal} @again=${this.load}></rl-refusal>
+      ${rows.length === 0 ? this.invitation(picker) : this.filled(rows)}`;
+  }
+
+  /** @param {unknown} picker */
+  invitation(picker) {
+    return html`
+      <div class="empty drop-place">
+        <h2>Drop sweep files here, or anywhere in the app</h2>
+        <p>CSV and other delimited text, or Touchstone. Every file is read and shown first, with its curve and what is wrong with it; nothing is stored before you send it.</p>
+        <p class="soft">The serial number comes from the file's name, such as <code>SN0042_sweep.csv</code>, and can be typed over.</p>
+        ${picker}
+      </div>`;
+  }
+
+  /** @param {Row[]} rows */
+  filled(rows) {
+    if (this.devices === null)
+      return this.refusal === null ? html`<rl-busy label="Reading devices and benches"></rl-busy>` : nothing;
+    const { place } = batch;
+    const counts = counted(rows, place);
+    const missing = this.tried ? merged(rows.filter((row) => stageOf(row, place) === 'lacking').map((row) => lacking({ ...row, own: {} }, place))) : {};
+    return html`
+      ${this.devices.length === 0 ? this.noDevice(rows) : html`
+        <section class="panel" aria-label="Where the runs belong">
+          <rl-send-place .place=${place} .devices=${this.devices} .benches=${batch.benches} .lots=${this.lots.get(place.deviceId)} .lacking=${missing}
+            @place=${this.onPlace} @circumstances=${(/** @type {CustomEvent} */ event) => { batch.circumstances = event.detail; }} @new-lot=${this.openLot}></rl-send-place>
+        </section>`}
+      ${this.making ? this.maker(rows) : nothing}
+      ${this.bar(rows, counts)}
+      ${this.questions(rows)}
+      ${this.table(rows, counts)}
+      ${rows.length === 1 && !this.making ? this.closely(rows[0]) : nothing}`;
+  }
+
+  /** A lab without a device: the file can be looked at, and made one of. @param {Row[]} rows */
+  noDevice(rows) {
+    if (this.making)
+      return nothing;
+    const readable = rows.find((row) => row.preview?.trace);
+    return html`
+      <div class="empty">
+        <h2>No device is described yet</h2>
+        <p>The file can be looked at all the same. To keep its run, the lab needs the device that it is of, a mask to judge it by, and a lot.</p>
+        ${session.holds(may.engineer)
+          ? readable !== undefined ? html`<button type="button" class="main" @click=${() => { this.making = true; }}>Make them from this file</button>` : html`<p class="soft">Once a file here can be read, they can be made from it.</p>`
+          : html`<p class="soft">Describing a device is an engineer's work. Ask one, then come back: the files stay in this table while the window is open.</p>`}
+      </div>`;
+  }
+
+  /** @param {Row[]} rows */
+  maker(rows) {
+    const row = rows.find((one) => one.preview?.trace);
+    if (row === undefined)
+      return nothing;
+    return html`
+      <div class="make-beside">
+        <rl-make-from-file .row=${row} .device=${this.deviceOf(batch.place.deviceId) ?? null} @limits=${(/** @type {CustomEvent} */ event) => { this.limits = event.detail; }} @made=${this.onMade}
+          @leave=${() => { this.making = false; this.limits = []; }}></rl-make-from-file>
+        <section class="panel" aria-label="The file"><rl-file-look .row=${{ ...row, sent: 'sending' }} .place=${batch.place} .limits=${this.limits}></rl-file-look></section>
+      </div>`;
+  }
+
+  /** @param {CustomEvent} event */
+  async onMade(event) {
+    const { device, lot } = event.detail;
+    if (device !== undefined) {
+      this.devices = [...this.devices ?? [], device];
+      this.lots = new Map([...this.lots, [device.id, []]]);
+      batch.placeAt({ deviceId: device.id, lotId: '', conditionId: '' });
+    }
+
+    if (lot !== undefined) {
+      this.lots = new Map([...this.lots, [lot.deviceId, [lot, ...this.lots.get(lot.deviceId) ?? []]]]);
+      batch.placeAt({ lotId: lot.id });
+    }
+
+    this.keepPlace();
+  }
+
+  /** What can be done now, and how far it is. @param {Row[]} rows @param {Record<Group, number>} counts */
+  bar(rows, counts) {
+    const queue = batch.sending;
+    const over = counts.sent + rows.filter((row) => ['refused', 'sameBytes'].includes(stageOf(row, batch.place))).length;
+    const sendable = counts.ready + rows.filter((row) => stageOf(row, batch.place) === 'lacking').length;
+    if (queue.length > 0) {
+      const whole = queue.length + over;
+      const part = rows.reduce((sum, row) => sum + (row.sent === 'sending' ? row.progress : 0), over) / whole;
+      return html`
+        <section class="panel send-bar" aria-label="Sending">
+          <div class="grows"><p>${several(queue.length, 'file')} to go, ${outcomeSentence(rows, batch.place)}</p><progress max="1" .value=${part} aria-label="Sent"></progress>${this.trouble(queue)}</div>
+          <button type="button" @click=${() => batch.stop()}>Stop</button>
+        </section>`;
+    }
+
+    return html`
+      <section class="panel send-bar" aria-label="Sending">
+        <div class="grows">
+          ${over > 0 ? html`<p role="status">${outcomeSentence(rows, batch.place)}</p>` : nothing}
+          ${counts.reading > 0 ? html`<p class="soft">${several(counts.reading, 'file is', 'files are')} being read.</p>${this.trouble(batch.previews)}` : nothing}
+          ${counts.asks > 0 && this.tried ? html`<p>${several(counts.asks, 'file asks', 'files ask')} you something first; the others can go.</p>` : nothing}
+        </div>
+        ${over > 0 && batch.place.lotId !== '' ? html`<a class="button" href="/lots/${batch.place.lotId}">Go to lot ${this.lotOf(batch.place.lotId)?.number ?? ''}</a>` : nothing}
+        ${counts.sent > 0 ? html`<button type="button" @click=${() => batch.remove(batch.rows.filter((row) => groupOf(stageOf(row, batch.place)) === 'sent').map((row) => row.id))}>Clear what is taken</button>` : nothing}
+        ${sendable > 0 ? html`<button type="button" class="main" @click=${this.sendAll}>${counts.ready === 0 ? 'Send' : `Send ${several(counts.ready, 'file')}`}</button>` : nothing}
+      </section>`;
+  }
+
+  /** @param {import('./send-queue.js').SendQueue<number>} queue */
+  trouble(queue) {
+    if (queue.state === 'still')
+      return html`<div class="refusal" role="alert"><p>${queue.sentence} It stands still; nothing is lost, and what was taken is not taken twice.</p><div><button type="button" @click=${() => queue.resume()}>Resume</button></div></div>`;
+    if (queue.state === 'waiting')
+      return html`<div class="refusal" role="status"><p>${queue.sentence} It tries again within ${several(Math.round(queue.nextTryMs / 1000), 'second')}.</p><div><button type="button" @click=${() => queue.resume()}>Try now</button></div></div>`;
+    return nothing;
+  }
+
+  /** What is open for many files at once. @param {Row[]} rows */
+  questions(rows) {
+    const groups = openGroups(rows);
+    const same = rows.filter((row) => stageOf(row, batch.place) === 'sameBytes');
+    const decided = rows.filter((row) => row.result?.issues.some(({ code }) => code === 'lotDecided'));
+    return html`
+      ${groups.map((group) => html`
+        <div class="question" role="status"><p>${group.length === 1 ? `${group[0].name} leaves open what its columns hold.` : `${group.length} files with the same heads leave open what their columns hold.`}</p><button type="button" @click=${() => this.askColumns(group[0])}>Say what they are</button></div>`)}
+      ${same.length === 0 ? nothing : html`
+        <div class="question" role="status"><p>${several(same.length, 'file holds', 'files hold')} bytes that stand in the lot for another unit. Nothing was stored of ${same.length === 1 ? 'it' : 'them'}.</p><button type="button" @click=${() => this.askSameBytes(same)}>Look at ${same.length === 1 ? 'it' : 'them'}</button></div>`}
+      ${decided.length === 0 ? nothing : html`
+        <div class="question bad" role="alert"><p>${decided[0].result?.issues.find(({ code }) => code === 'lotDecided')?.message ?? ''} ${several(decided.length, 'file was', 'files were')} not taken. Choose another lot above and send ${decided.length === 1 ? 'it' : 'them'} again, or ask quality to reopen the lot.</p>
+          <button type="button" @click=${() => this.sendAgain(decided)}>Send ${decided.length === 1 ? 'it' : 'them'} again</button></div>`}`;
+  }
+
+  /** @param {Row[]} rows @param {Record<Group, number>} counts */
+  table(rows, counts) {
+    const { place } = batch;
+    const group = counts[this.group] === 0 ? 'all' : this.group;
+    const within = group === 'all' ? rows : rows.filter((row) => groupOf(stageOf(row, place)) === group);
+    const from = Math.min(this.from, Math.max(0, Math.floor((within.length - 1) / pageRows) * pageRows));
+    const shown = within.slice(from, from + pageRows);
+    return html`
+      <section class="panel" aria-labelledby="files">
+        <div class="page-head">
+          <h2 id="files">Files <span class="soft">${rows.length}</span></h2>
+          ${rows.length < 2 ? nothing : html`
+            <div class="row" role="group" aria-label="Which files are shown">
+              ${groupWords.filter(([name]) => name === 'all' || counts[name] > 0).map(([name, words]) => html`
+                <button type="button" aria-pressed=${name === group ? 'true' : 'false'} @click=${() => { this.group = name; this.from = 0; }}>${words} ${counts[name]}</button>`)}
+            </div>`}
+        </div>
+        <rl-data-table class="files" cards caption="Files" caption-unseen .columns=${fileColumns(this.tableOf(rows))} .rows=${shown}></rl-data-table>
+        ${within.length <= pageRows ? nothing : html`
+          <div class="row">
+            <button type="button" ?disabled=${from === 0} @click=${() => { this.from = from - pageRows; }}>Files before</button>
+            <span>${from + 1} to ${from + shown.length} of ${within.length}</span>
+            <button type="button" ?disabled=${from + pageRows >= within.length} @click=${() => { this.from = from + pageRows; }}>Files after</button>
+          </div>`}
+      </section>`;
+  }
+
+  /** @param {Row[]} rows @returns {import('./send-table.js').TableOf} */
+  tableOf(rows) {
+    return {
+      place: batch.place,
+      behind: repeated(rows, batch.place),
+      deviceOf: (id) => this.deviceOf(id),
+      lotOf: (id) => this.lotOf(id),
+      look: (row) => this.look(row),
+      typeSerial: (row, serial) => batch.change(row.id, { serial: serial.trim() === row.guess ? null : serial.trim() }),
+      askColumns: (row) => void this.askColumns(row),
+      askSameBytes: (row) => void this.askSameBytes([row]),
+      sendAgain: (row) => this.sendAgain([row]),
+      readAgain: (row) => batch.readAgain(row),
+      remove: (row) => batch.remove([row.id]),
+    };
+  }
+
+  /** @param {Row} row */
+  closely(row) {
+    return row.preview === null ? nothing : html`
+      <section class="panel" aria-label=${row.name}>
+        ${this.lookAt(row)}
+        ${session.holds(may.engineer) && row.preview.trace !== null && row.result === null ? html`<p class="soft">Is it of a device that the lab does not know? <button type="button" class="plain" @click=${this.makeAnother}>Make device, mask and lot from it</button></p>` : nothing}
+      </section>`;
+  }
+
+  makeAnother() {
+    batch.placeAt({ deviceId: '', lotId: '', conditionId: '' });
+    this.making = true;
+  }
+
+  /** @param {Row} row @param {() => void} [then] */
+  lookAt(row, then = () => {}) {
+    const whole = placeOf(row, batch.place);
+    void this.loadLots(whole.deviceId);
+    return html`<rl-file-look class="stack" .row=${row} .place=${batch.place} .devices=${this.devices ?? []} .lots=${this.lots.get(whole.deviceId)}
+      @own=${(/** @type {CustomEvent} */ event) => batch.change(row.id, { own: event.detail })} @remove=${() => { batch.remove([row.id]); then(); }}></rl-file-look>`;
+  }
+
+  /** @param {Row} row */
+  look(row) {
+    void openDialog({
+      heading: row.name,
+      wide: true,
+      content: (dialog) => {
+        this.updateLook = dialog.update;
+        const now = batch.rows.find(({ id }) => id === row.id);
+        return html`${now === undefined ? nothing : this.lookAt(now, () => dialog.close())}${ends(nothing, dialog, 'Close')}`;
+      },
+    }).then(() => { this.updateLook = null; });
+  }
+
+  /** @param {Row} row */
+  async askColumns(row) {
+    const alike = batch.rows.filter((one) => isOpen(one) && headsOf(one) === headsOf(row));
+    const choice = await askColumns(alike, batch.place.bench.trim());
+    if (choice !== undefined)
+      batch.chooseColumns(batch.rows.filter((one) => one.preview !== null && isOpen(one) && headsOf(one) === headsOf(row)), choice, 'asked');
+  }
+
+  /** @param {Row[]} rows */
+  async askSameBytes(rows) {
+    if (await askSameBytes(rows))
+      batch.acknowledge(rows.map((row) => row.id));
+  }
+
+  /** @param {Row[]} rows */
+  sendAgain(rows) {
+    for (const row of rows)
+      batch.change(row.id, { sent: 'no', result: null, problem: '' });
+    const ids = rows.map((row) => row.id);
+    this.sendAll((/** @type {Row} */ row) => ids.includes(row.id));
+  }
+
+  /** @param {unknown} [which] */
+  sendAll(which) {
+    this.tried = true;
+    const wanted = typeof which === 'function' ? /** @type {(row: Row) => boolean} */ (which) : () => true;
+    const ready = batch.rows.filter((row) => wanted(row) && stageOf(row, batch.place) === 'ready');
+    if (ready.length === 0) {
+      void this.updateComplete.then(() => setTimeout(() => /** @type {HTMLElement | null} */ (this.querySelector('[aria-invalid="true"]'))?.focus(), 50));
+      return;
+    }
+
+    keepBench(batch.place.bench);
+    const ids = new Set(ready.map((row) => row.id));
+    batch.sendReady((row) => ids.has(row.id));
+  }
+
+  /** Says what a batch came to once nothing is under way any more, and asks what came up. */
+  watchSending() {
+    const isSending = batch.sending.length > 0;
+    if (this.wasSending && !isSending) {
+      this.lots = new Map();
+      void this.loadLots(batch.place.deviceId);
+    }
+
+    this.wasSending = isSending;
+  }
+
+  /** @param {Event} event */
+  onPicked(event) {
+    const input = /** @type {HTMLInputElement} */ (event.target);
+    this.take([...input.files ?? []]);
+    input.value = '';
+  }
+
+  /** @param {CustomEvent} event */
+  onPlace(event) {
+    batch.placeAt(event.detail);
+    this.keepPlace();
+    void this.loadLots(batch.place.deviceId);
+  }
+
+  keepPlace() {
+    const { deviceId, lotId, conditionId, bench, purpose } = batch.place;
+    keepInAddress(printState(shape, { device: deviceId, lot: lotId, condition: conditionId, bench, purpose }));
+  }
+
+  async openLot() {
+    const device = this.deviceOf(batch.place.deviceId);
+    const lot = await makeLot(this.devices ?? [], device?.id);
+    if (lot === null)
+      return;
+    this.lots = new Map([...this.lots, [lot.deviceId, [lot, ...this.lots.get(lot.deviceId) ?? []]]]);
+    batch.placeAt({ deviceId: lot.deviceId, lotId: lot.id, ...(lot.deviceId === device?.id ? {} : { conditionId: '' }) });
+    this.keepPlace();
+  }
+
+  async clear() {
+    const unsent = batch.rows.filter((row) => row.result === null && row.sent !== 'done').length;
+    if (unsent > 0 && !await confirm({ heading: 'Clear the table?', sentence: `${several(unsent, 'file')} of it ${unsent === 1 ? 'is' : 'are'} not sent. The files themselves stay where they are.`, act: 'Clear it', grave: true }))
+      return;
+    batch.stop();
+    batch.clear();
+    this.tried = false;
+    this.making = false;
+  }
+}
+
+/** The first sentence of each field among some rows. @param {Record<string, string>[]} all */
+function merged(all) {
+  return Object.assign({}, ...all);
+}
+
+function keptBench() {
+  try {
+    return localStorage.getItem(benchKey) ?? '';
+  } catch {
+    return '';
+  }
+}
+
+/** The bench that this browser stands at. @param {string} bench */
+function keepBench(bench) {
+  try {
+    localStorage.setItem(benchKey, bench);
+  } catch {
+    // Without storage it is typed again next time.
+  }
+}
+
+customElements.define('rl-page-send', SendPage);
