@@ -9,9 +9,11 @@ import { several } from '../numbers.js';
 import { keepInAddress, oneOf, printState, readState, text } from '../router.js';
 import { may, session } from '../session.js';
 import { makeLot } from './lots-open.js';
+import { keepBench, keptBench } from './send-bench.js';
 import { batch } from './send-batch.js';
+import { barOf, questionsOf } from './send-bar.js';
 import { askColumns, askSameBytes } from './send-questions.js';
-import { counted, groupOf, headsOf, isOpen, lacking, openGroups, outcomeSentence, placeOf, purposes, repeated, stageOf } from './send-rows.js';
+import { counted, groupOf, headsOf, isOpen, lacking, placeOf, purposes, repeated, stageOf } from './send-rows.js';
 import { fileColumns } from './send-table.js';
 import '../parts/busy.js';
 import '../parts/data-table.js';
@@ -26,7 +28,6 @@ import './send-place.js';
 await ownStyles(import.meta.url);
 
 const pageRows = 50;
-const benchKey = 'responseledger-bench';
 const shape = { device: text(), lot: text(), condition: text(), bench: text(), purpose: oneOf(purposes) };
 
 /** @type {readonly (readonly [Group, string])[]} */
@@ -185,8 +186,8 @@ class SendPage extends Page {
             @place=${this.onPlace} @circumstances=${(/** @type {CustomEvent} */ event) => { batch.circumstances = event.detail; }} @new-lot=${this.openLot}></rl-send-place>
         </section>`}
       ${this.making ? this.maker(rows) : nothing}
-      ${this.bar(rows, counts)}
-      ${this.questions(rows)}
+      ${barOf(rows, counts, { tried: this.tried, lotNumber: this.lotOf(place.lotId)?.number ?? '', send: () => this.sendAll() })}
+      ${questionsOf(rows, { columns: (row) => this.askColumns(row), sameBytes: (same) => this.askSameBytes(same), again: (some) => this.sendAgain(some) })}
       ${this.table(rows, counts)}
       ${rows.length === 1 && !this.making ? this.closely(rows[0]) : nothing}`;
   }
@@ -234,58 +235,6 @@ class SendPage extends Page {
     }
 
     this.keepPlace();
-  }
-
-  /** What can be done now, and how far it is. @param {Row[]} rows @param {Record<Group, number>} counts */
-  bar(rows, counts) {
-    const queue = batch.sending;
-    const over = counts.sent + rows.filter((row) => ['refused', 'sameBytes'].includes(stageOf(row, batch.place))).length;
-    const sendable = counts.ready + rows.filter((row) => stageOf(row, batch.place) === 'lacking').length;
-    if (queue.length > 0) {
-      const whole = queue.length + over;
-      const part = rows.reduce((sum, row) => sum + (row.sent === 'sending' ? row.progress : 0), over) / whole;
-      return html`
-        <section class="panel send-bar" aria-label="Sending">
-          <div class="grows"><p>${several(queue.length, 'file')} to go, ${outcomeSentence(rows, batch.place)}</p><progress max="1" .value=${part} aria-label="Sent"></progress>${this.trouble(queue)}</div>
-          <button type="button" @click=${() => batch.stop()}>Stop</button>
-        </section>`;
-    }
-
-    return html`
-      <section class="panel send-bar" aria-label="Sending">
-        <div class="grows">
-          ${over > 0 ? html`<p role="status">${outcomeSentence(rows, batch.place)}</p>` : nothing}
-          ${counts.reading > 0 ? html`<p class="soft">${several(counts.reading, 'file is', 'files are')} being read.</p>${this.trouble(batch.previews)}` : nothing}
-          ${counts.asks > 0 && this.tried ? html`<p>${several(counts.asks, 'file asks', 'files ask')} you something first; the others can go.</p>` : nothing}
-        </div>
-        ${over > 0 && batch.place.lotId !== '' ? html`<a class="button" href="/lots/${batch.place.lotId}">Go to lot ${this.lotOf(batch.place.lotId)?.number ?? ''}</a>` : nothing}
-        ${counts.sent > 0 ? html`<button type="button" @click=${() => batch.remove(batch.rows.filter((row) => groupOf(stageOf(row, batch.place)) === 'sent').map((row) => row.id))}>Clear what is taken</button>` : nothing}
-        ${sendable > 0 ? html`<button type="button" class="main" @click=${this.sendAll}>${counts.ready === 0 ? 'Send' : `Send ${several(counts.ready, 'file')}`}</button>` : nothing}
-      </section>`;
-  }
-
-  /** @param {import('./send-queue.js').SendQueue<number>} queue */
-  trouble(queue) {
-    if (queue.state === 'still')
-      return html`<div class="refusal" role="alert"><p>${queue.sentence} It stands still; nothing is lost, and what was taken is not taken twice.</p><div><button type="button" @click=${() => queue.resume()}>Resume</button></div></div>`;
-    if (queue.state === 'waiting')
-      return html`<div class="refusal" role="status"><p>${queue.sentence} It tries again within ${several(Math.round(queue.nextTryMs / 1000), 'second')}.</p><div><button type="button" @click=${() => queue.resume()}>Try now</button></div></div>`;
-    return nothing;
-  }
-
-  /** What is open for many files at once. @param {Row[]} rows */
-  questions(rows) {
-    const groups = openGroups(rows);
-    const same = rows.filter((row) => stageOf(row, batch.place) === 'sameBytes');
-    const decided = rows.filter((row) => row.result?.issues.some(({ code }) => code === 'lotDecided'));
-    return html`
-      ${groups.map((group) => html`
-        <div class="question" role="status"><p>${group.length === 1 ? `${group[0].name} leaves open what its columns hold.` : `${group.length} files with the same heads leave open what their columns hold.`}</p><button type="button" @click=${() => this.askColumns(group[0])}>Say what they are</button></div>`)}
-      ${same.length === 0 ? nothing : html`
-        <div class="question" role="status"><p>${several(same.length, 'file holds', 'files hold')} bytes that stand in the lot for another unit. Nothing was stored of ${same.length === 1 ? 'it' : 'them'}.</p><button type="button" @click=${() => this.askSameBytes(same)}>Look at ${same.length === 1 ? 'it' : 'them'}</button></div>`}
-      ${decided.length === 0 ? nothing : html`
-        <div class="question bad" role="alert"><p>${decided[0].result?.issues.find(({ code }) => code === 'lotDecided')?.message ?? ''} ${several(decided.length, 'file was', 'files were')} not taken. Choose another lot above and send ${decided.length === 1 ? 'it' : 'them'} again, or ask quality to reopen the lot.</p>
-          <button type="button" @click=${() => this.sendAgain(decided)}>Send ${decided.length === 1 ? 'it' : 'them'} again</button></div>`}`;
   }
 
   /** @param {Row[]} rows @param {Record<Group, number>} counts */
@@ -458,23 +407,6 @@ class SendPage extends Page {
 /** The first sentence of each field among some rows. @param {Record<string, string>[]} all */
 function merged(all) {
   return Object.assign({}, ...all);
-}
-
-function keptBench() {
-  try {
-    return localStorage.getItem(benchKey) ?? '';
-  } catch {
-    return '';
-  }
-}
-
-/** The bench that this browser stands at. @param {string} bench */
-function keepBench(bench) {
-  try {
-    localStorage.setItem(benchKey, bench);
-  } catch {
-    // Without storage it is typed again next time.
-  }
 }
 
 customElements.define('rl-page-send', SendPage);
