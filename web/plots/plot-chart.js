@@ -2,7 +2,7 @@
 // golden run and the runs with names. What else is in a panel is painted by whoever made the chart, under and over the lines.
 
 import { Chart, LinearScale, LineController, LineElement, LogarithmicScale, PointElement } from 'chart.js';
-import { logAxis, placeOf, straightAxis, valueAtPlace } from './spans.js';
+import { logAxis, straightAxis, valueAtPlace } from './spans.js';
 import { logTicks, straightTicks } from './ticks.js';
 
 Chart.register(LineController, LineElement, PointElement, LinearScale, LogarithmicScale);
@@ -105,10 +105,15 @@ function panelsOf({ scales: { x, ...others } }) {
   return (/** @type {PanelKey[]} */ (['upper', 'lower'])).filter((key) => others[key] !== undefined).map((key) => {
     const y = others[key];
     const [frequency, values] = [{ min: x.min, max: x.max }, { min: y.min, max: y.max }];
+    // Curves are placed point by point, so what does not change is taken out of it.
+    const xPerDecade = (x.right - x.left) / Math.log10(frequency.max / frequency.min);
+    const xZero = x.left - xPerDecade * Math.log10(frequency.min);
+    const yPerUnit = (y.top - y.bottom) / (values.max - values.min);
+    const yZero = y.bottom - yPerUnit * values.min;
     return {
       key, frequency, values, left: x.left, right: x.right, top: y.top, bottom: y.bottom,
-      x: (frequencyHz) => x.left + placeOf(logAxis, frequency, frequencyHz) * (x.right - x.left),
-      y: (value) => y.bottom - placeOf(straightAxis, values, value) * (y.bottom - y.top),
+      x: (frequencyHz) => xZero + xPerDecade * Math.log10(frequencyHz),
+      y: (value) => yZero + yPerUnit * value,
       frequencyAt: (pixel) => valueAtPlace(logAxis, frequency, (pixel - x.left) / (x.right - x.left)),
       valueAt: (pixel) => valueAtPlace(straightAxis, values, (y.bottom - pixel) / (y.bottom - y.top)),
     };

@@ -50,7 +50,7 @@ export function cursorOf(plot, { id, span, atHz, sentence }) {
     </div>`;
 }
 
-/** @param {{id: string, label: string, value: number, problem: string, onValue: (typed: string) => void}} entry */
+/** @param {{id: string, label: string, value: number, problem: string, onValue: (typed: string) => number | null}} entry `onValue` gives back what it took, or null */
 function numberEntry({ id, label, value, problem, onValue }) {
   const active = document.activeElement;
   const shown = active instanceof HTMLInputElement && active.id === id ? active.value : frequency(value, 5);
@@ -61,7 +61,11 @@ function numberEntry({ id, label, value, problem, onValue }) {
         .value=${live(shown)}
         aria-invalid=${problem === '' ? 'false' : 'true'} aria-describedby=${problem === '' ? nothing : `${id}-problem`}
         @focus=${(/** @type {Event} */ event) => /** @type {HTMLInputElement} */ (event.target).select()}
-        @change=${(/** @type {Event} */ event) => onValue(/** @type {HTMLInputElement} */ (event.target).value)}>
+        @change=${(/** @type {Event} */ event) => {
+          const input = /** @type {HTMLInputElement} */ (event.target);
+          const taken = onValue(input.value);
+          if (taken !== null) input.value = frequency(taken, 5);
+        }}>
       ${problem === '' ? nothing : html`<span class="problem" id="${id}-problem" role="alert">${problem}</span>`}
     </span>`;
 }

@@ -62,12 +62,12 @@ function entry(plot, key, mark, name, sets, readings) {
 
 /** @param {TraceSet[]} sets @param {(Reading | null)[]} readings */
 function readingsOf(sets, readings) {
-  return sets.map((set, i) => {
+  return html`<span class="plot-readings">${sets.map((set, i) => {
     const reading = readings[i] ?? null;
     const margin = reading?.margin ?? null;
-    return html`<span class="plot-reading"><span>${valueText(set, reading?.value ?? NaN)}</span>${margin === null ? nothing
+    return html`<span class="plot-reading">${valueText(set, reading?.value ?? NaN)}${margin === null ? nothing
       : html` <span class="plot-margin ${margin.margin < 0 ? 'bad' : ''}" title="margin to ${margin.limit}">(${marginText(set, reading)})</span>`}</span>`;
-  });
+  })}</span>`;
 }
 
 /** @param {string} kind @param {number[]} dash */
@@ -89,7 +89,7 @@ export function tableOf(model, atHz, raised) {
   const golden = goldenReadings(sets, atHz);
   const goldenSerial = sets.find((set) => set.golden !== null)?.golden?.serial;
   return html`
-    <div class="scroll">
+    <div class="scroll" tabindex="0" role="region" aria-label="Values under the cursor">
       <table>
         <caption>Values at ${frequency(atHz, 6)}</caption>
         <thead>

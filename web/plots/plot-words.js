@@ -23,8 +23,8 @@ export function axisTitle(set, levelHz) {
 /** The unit of a difference, or beside a number where the axis says the rest: dB of "dB re 1 V/Pa". @param {TraceSet} set */
 export const shortUnit = (set) => (set.unit.startsWith('dB') ? 'dB' : set.unit);
 
-/** @param {TraceSet} set @param {number} value */
-export const valueText = (set, value) => worded(value, shortUnit(set));
+/** A value with its unit. What is left of a level or an angle by rounding alone is zero, as in a verdict. @param {TraceSet} set @param {number} value */
+export const valueText = (set, value) => worded(set.quantity !== 'delay' && Math.abs(value) < 1e-9 ? 0 : value, shortUnit(set));
 
 /** @param {TraceSet} set @param {Reading | null} reading */
 export const marginText = (set, reading) => withSign(reading?.margin?.margin, shortUnit(set));

@@ -103,15 +103,19 @@ export class ResponsePlot extends Element {
   }
 
   get levelFrequencyHz() {
-    return this.levelHz ?? this.#atHz;
+    return this.levelHz ?? this.#middleHz;
   }
 
   get #atHz() {
-    const whole = this.#model?.frequency ?? { min: 1, max: 1 };
-    return inside(whole, this.cursorHz ?? Math.sqrt(whole.min * whole.max));
+    return inside(this.#model?.frequency ?? { min: 1, max: 1 }, this.cursorHz ?? this.#middleHz);
   }
 
-  /** Where the cursor stands, and what is in view of the frequencies. @returns {Span} */
+  get #middleHz() {
+    const gridHz = this.upper?.frequencyHz ?? this.lower?.frequencyHz ?? [];
+    return gridHz.length === 0 ? 1 : Math.sqrt(Number(gridHz[0]) * Number(gridHz[gridHz.length - 1]));
+  }
+
+  /** What is in view of the frequencies. @returns {Span} */
   get #frequency() {
     const whole = this.#model?.frequency ?? { min: 1, max: 10 };
     return this.view.frequency === null ? whole : within(logAxis, this.view.frequency, whole, leastShare);
@@ -132,7 +136,7 @@ export class ResponsePlot extends Element {
   /** @param {Map<string, unknown>} changed */
   willUpdate(changed) {
     const fresh = this.#model === null || ['upper', 'lower', 'basis', 'chosen'].some((name) => changed.has(name));
-    if (fresh || (this.basis === 'levelled' && (changed.has('levelHz') || (this.levelHz === null && changed.has('cursorHz'))))) {
+    if (fresh || (this.basis === 'levelled' && changed.has('levelHz'))) {
       this.#model = plotModel({ upper: this.upper, lower: this.lower, basis: this.basis, levelHz: this.basis === 'levelled' ? this.levelFrequencyHz : NaN, chosen: this.chosen });
     }
   }
@@ -248,20 +252,22 @@ export class ResponsePlot extends Element {
     this.#moveCursor(sliderFrequency(this.#frequency, place, this.#atHz, this.#gridHz));
   }
 
-  /** @param {string} typed */
+  /** @param {string} typed @returns {number | null} the frequency, or null where it was refused */
   typeCursor(typed) {
     const atHz = this.#typedFrequency(typed, 'cursor');
-    if (atHz === null) return;
+    if (atHz === null) return null;
     if (atHz < this.#frequency.min || atHz > this.#frequency.max) this.showWhole();
     this.#moveCursor(atHz);
+    return atHz;
   }
 
-  /** @param {string} typed */
+  /** @param {string} typed @returns {number | null} */
   typeLevel(typed) {
     const atHz = this.#typedFrequency(typed, 'level');
-    if (atHz === null) return;
+    if (atHz === null) return null;
     this.levelHz = atHz;
     this.tell('basis', { basis: this.basis, levelHz: atHz });
+    return atHz;
   }
 
   /** @param {KeyboardEvent} event */

@@ -6,6 +6,7 @@ import { significant, withPrefix } from '../numbers.js';
 
 const digits = 9;
 const textWidthPx = 34;
+const leastTextGapPx = 26;
 
 /**
  * Ticks of a logarithmic axis at 1 to 9 times each power of ten; the powers are major. Texts stand at 1, 2 and 5 while a
@@ -16,7 +17,7 @@ const textWidthPx = 34;
  */
 export function logTicks(span, lengthPx) {
   const decadePx = lengthPx / Math.log10(span.max / span.min);
-  const texts = decadePx >= 3 * textWidthPx ? [1, 2, 5] : [1];
+  const texts = decadePx * Math.log10(2) >= leastTextGapPx ? [1, 2, 5] : [1];
   const every = Math.max(1, Math.ceil(textWidthPx / decadePx));
   const ticks = [];
   for (let power = Math.floor(Math.log10(span.min)); power <= Math.ceil(Math.log10(span.max)); power++) {
