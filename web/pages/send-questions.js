@@ -5,8 +5,8 @@ import { ends, openDialog } from '../parts/dialog.js';
 import { html, nothing } from '../parts/element.js';
 import { several } from '../numbers.js';
 import { serialOf } from './send-rows.js';
-import { outlineOf } from './send-table.js';
 import { choiceWords, spanWords } from './send-words.js';
+import '../plots/mini-plot.js';
 
 /** @typedef {import('./send-rows.js').Row} Row */
 
@@ -82,7 +82,7 @@ function lookOf(preview) {
     return html`<span class="soft small">being read so</span>`;
   return preview.trace === null
     ? html`<span class="problem">Read so it is refused: ${preview.issues[0]?.message ?? ''}</span>`
-    : html`<span class="candidate-look">${outlineOf(preview.trace)}<span class="soft small">${spanWords(preview)}</span></span>`;
+    : html`<span class="candidate-look"><rl-mini-plot .trace=${preview.trace}></rl-mini-plot><span class="soft small">${spanWords(preview)}</span></span>`;
 }
 
 /**

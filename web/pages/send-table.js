@@ -1,11 +1,11 @@
 // The columns of the table of files: what a file is, where it belongs, what was read in it, and how it stands.
 
 import { badge } from '../parts/badges.js';
-import { html, nothing, svg } from '../parts/element.js';
+import { html, nothing } from '../parts/element.js';
 import { dayAndTime, fileSize, frequency, margin, several } from '../numbers.js';
-import { miniTrace } from '../plots/mini-trace.js';
 import { lacking, measuredAt, placeOf, serialOf, serialProblem, stageOf, whereOf } from './send-rows.js';
 import { foundWords, spanWords } from './send-words.js';
+import '../plots/mini-plot.js';
 
 /** @typedef {import('./send-rows.js').Row} Row */
 /** @typedef {import('./send-rows.js').Place} Place */
@@ -27,9 +27,6 @@ import { foundWords, spanWords } from './send-words.js';
  * @property {(row: Row) => void} remove
  */
 
-const width = 132;
-const height = 44;
-
 /** @param {TableOf} page @returns {readonly Column[]} */
 export function fileColumns(page) {
   return [
@@ -38,7 +35,7 @@ export function fileColumns(page) {
     { key: 'place', label: 'Lot and condition', cell: (row) => placeCell(row, page) },
     { key: 'measured', label: 'Measured', cell: (row) => measuredCell(row, page) },
     { key: 'found', label: 'Found in it', cell: (row) => foundCell(row) },
-    { key: 'curve', label: 'Curve', cell: (row) => curveOf(row) },
+    { key: 'curve', label: 'Curve', cell: (row) => (row.preview?.trace ? html`<rl-mini-plot .trace=${row.preview.trace}></rl-mini-plot>` : nothing) },
     { key: 'stage', label: 'State', cell: (row) => stageCell(row, page) },
   ];
 }
@@ -91,23 +88,6 @@ function foundCell(row) {
     <span class="small">${foundWords(preview)}</span>
     ${preview.trace === null ? nothing : html`<br><span class="soft small">${spanWords(preview)}</span>`}
     ${remarks > 0 ? html`<br><span class="soft small" title=${preview.notes.map((/** @type {any} */ note) => note.message).join('\n')}>${several(remarks, 'note')}${row.columnsFrom === 'bench' ? ', columns as the bench remembers' : row.columnsFrom === 'asked' ? ', columns as chosen' : ''}</span>` : nothing}`;
-}
-
-/** The outline of a row's curve. @param {Row} row */
-export function curveOf(row) {
-  const trace = row.preview?.trace ?? null;
-  return trace === null ? nothing : outlineOf(trace);
-}
-
-/** The outline of a trace: gain drawn through, phase dashed. @param {import('../plots/mini-trace.js').MiniTrace} trace */
-export function outlineOf(trace) {
-  const { gain, phase, words } = miniTrace(trace, width, height);
-  return html`
-    <svg class="mini-trace" viewBox="0 0 ${width} ${height}" role="img" aria-label=${words}>
-      ${svg`<title>${words}</title>`}
-      ${phase === '' ? nothing : svg`<path class="phase" d=${phase}></path>`}
-      ${svg`<path class="gain" d=${gain}></path>`}
-    </svg>`;
 }
 
 /** @param {Row} row @param {TableOf} page */

@@ -3,7 +3,6 @@ import test from 'node:test';
 import { choiceWords, foundWords, holds, spanWords } from '../../../web/pages/send-words.js';
 import { maskAround } from '../../../web/pages/send-mask.js';
 import { limitAt } from '../../../web/plots/limit-area.js';
-import { miniTrace } from '../../../web/plots/mini-trace.js';
 import { limitOf } from '../../../web/plots/trace-set.js';
 import { filesOf } from '../../../web/parts/incoming.js';
 
@@ -41,15 +40,6 @@ test('A first mask holds its run at the distance, and nothing that is further aw
   }
 
   assert.deepEqual(maskAround({ frequencyHz, gainDb }, { distanceDb: 1, fromHz: 2e5, toHz: 3e5 }).limits, []);
-});
-
-test('An outline stays on its surface, and has a gap where a level is absent', () => {
-  const { gain, phase, words } = miniTrace({ frequencyHz: [10, 100, 1_000, 10_000], gainDb: [0, null, -40, -20], phaseDeg: null }, 100, 40);
-  const numbers = [...gain.matchAll(/[ML]([\d.]+) ([\d.]+)/g)].map(([, x, y]) => [Number(x), Number(y)]);
-  assert.deepEqual(numbers, [[2, 2], [66, 38], [98, 20]]);
-  assert.equal(gain.match(/M/g).length, 2);
-  assert.equal(phase, '');
-  assert.equal(words, 'gain \u221240.00\u00a0dB to 0.00\u00a0dB from 10\u00a0Hz to 10\u00a0kHz, no phase');
 });
 
 test('Dropped folders give their files, hidden ones aside, and what cannot be read is counted', async () => {
