@@ -9,7 +9,7 @@ import { curvesOf, drawPercentiles, drawRuns } from './run-drawing.js';
 const longestSliceMs = 8;
 
 /** The name under which the content security policy lets this module give a worker its address. */
-export const policyName = 'responseledger-plots';
+const policyName = 'responseledger';
 
 export class RunPainter {
   /** @type {Worker | null} */
