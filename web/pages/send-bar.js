@@ -3,7 +3,7 @@
 import { html, nothing } from '../parts/element.js';
 import { several } from '../numbers.js';
 import { batch } from './send-batch.js';
-import { groupOf, openGroups, outcomeSentence, stageOf } from './send-rows.js';
+import { groupOf, lacking, openGroups, outcomeSentence, stageOf } from './send-rows.js';
 
 /** @typedef {import('./send-rows.js').Row} Row */
 /** @typedef {import('./send-rows.js').Group} Group */
@@ -17,7 +17,7 @@ import { groupOf, openGroups, outcomeSentence, stageOf } from './send-rows.js';
 export function barOf(rows, counts, { tried, lotNumber, send }) {
   const queue = batch.sending;
   const over = counts.sent + rows.filter((row) => ['refused', 'sameBytes'].includes(stageOf(row, batch.place))).length;
-  const sendable = counts.ready + rows.filter((row) => stageOf(row, batch.place) === 'lacking').length;
+  const sendable = counts.ready + counts.placeless;
   if (queue.length > 0) {
     const whole = queue.length + over;
     const part = rows.reduce((sum, row) => sum + (row.sent === 'sending' ? row.progress : 0), over) / whole;
@@ -33,12 +33,22 @@ export function barOf(rows, counts, { tried, lotNumber, send }) {
       <div class="grows">
         ${over > 0 ? html`<p role="status">${outcomeSentence(rows, batch.place)}</p>` : nothing}
         ${counts.reading > 0 ? html`<p class="soft">${several(counts.reading, 'file is', 'files are')} being read.</p>${trouble(batch.previews)}` : nothing}
+        ${counts.placeless > 0 ? html`<p>${several(counts.placeless, 'file lacks', 'files lack')} ${missingWords(rows)}: choose above.</p>` : nothing}
         ${counts.asks > 0 && tried ? html`<p>${several(counts.asks, 'file asks', 'files ask')} you something first; the others can go.</p>` : nothing}
       </div>
       ${over > 0 && batch.place.lotId !== '' ? html`<a class="button" href="/lots/${batch.place.lotId}">Go to lot ${lotNumber}</a>` : nothing}
       ${counts.sent > 0 ? html`<button type="button" @click=${() => batch.remove(batch.rows.filter((row) => groupOf(stageOf(row, batch.place)) === 'sent').map((row) => row.id))}>Clear what is taken</button>` : nothing}
       ${sendable > 0 ? html`<button type="button" class="main" @click=${send}>${counts.ready === 0 ? 'Send' : `Send ${several(counts.ready, 'file')}`}</button>` : nothing}
     </section>`;
+}
+
+const placeWords = /** @type {Record<string, string>} */ ({ deviceId: 'the device', lotId: 'the lot', bench: 'the bench', measuredAt: 'the time of measuring' });
+
+/** What the batch's place lacks for its files. @param {Row[]} rows */
+function missingWords(rows) {
+  const missing = new Set(rows.filter((row) => stageOf(row, batch.place) === 'placeless').flatMap((row) => Object.keys(lacking(row, batch.place))));
+  const words = [...missing].map((field) => placeWords[field] ?? field);
+  return words.length < 2 ? words.join('') : `${words.slice(0, -1).join(', ')} and ${words.at(-1)}`;
 }
 
 /** @param {import('./send-queue.js').SendQueue<number>} queue */

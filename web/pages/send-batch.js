@@ -1,5 +1,5 @@
 // The batch of files that is being looked at and sent. There is one, and it outlives the page: sending goes on while somebody
-// looks at a run, and what was typed is there when they come back. Tells "change", at most once a frame.
+// looks at a run, and what was typed is there when they come back. Tells "change", a few times a second at most.
 
 import { ask, send, sendForm } from '../api.js';
 import { session } from '../session.js';
@@ -13,12 +13,15 @@ import { SendQueue } from './send-queue.js';
 const previewsAtOnce = 3;
 const sendsAtOnce = 2;
 const namesAtOnce = 500;
+const calmMs = 150;
 
 class Batch extends EventTarget {
   /** @type {Map<number, Row>} */
   #rows = new Map();
   #lastId = 0;
-  #told = 0;
+  /** @type {ReturnType<typeof setTimeout> | undefined} */
+  #told;
+  #lastTold = -Infinity;
   #whose = '';
 
   constructor() {
@@ -265,18 +268,15 @@ class Batch extends EventTarget {
   }
 
   #tell() {
-    if (this.#told !== 0)
+    if (this.#told !== undefined)
       return;
-    // A window that is not looked at has no frames; then nobody waits for one.
-    this.#told = 1;
-    const tell = () => {
-      this.#told = 0;
+    // At once after a quiet time, so that an act is answered; else after a while, so that 500 files do not redraw 500 times.
+    const wait = Math.max(0, this.#lastTold + calmMs - performance.now());
+    this.#told = setTimeout(() => {
+      this.#told = undefined;
+      this.#lastTold = performance.now();
       this.dispatchEvent(new Event('change'));
-    };
-    if (document.visibilityState === 'visible')
-      requestAnimationFrame(tell);
-    else
-      setTimeout(tell, 200);
+    }, wait);
   }
 }
 

@@ -65,7 +65,7 @@ class SendPlace extends Element {
     const isNew = place.bench.trim() !== '' && this.benches.length > 0 && !this.benches.some(({ name }) => name === place.bench.trim());
     return html`
       <form class="send-place" aria-label="Where the runs belong" @change=${this.onChange} @submit=${(/** @type {Event} */ event) => event.preventDefault()}>
-        <rl-field label="Device" name="deviceId" .options=${deviceOptions(this.devices, 'choose')} .value=${place.deviceId} .errors=${this.errorsOf('deviceId')}></rl-field>
+        <rl-field class="broad" label="Device" name="deviceId" .options=${deviceOptions(this.devices, 'choose')} .value=${place.deviceId} .errors=${this.errorsOf('deviceId')}></rl-field>
         <div class="with-act">
           <rl-field label="Lot" name="lotId" .options=${lotOptions(this.lots, this.noLot(place))} .value=${place.lotId} ?disabled=${place.deviceId === ''} .errors=${this.errorsOf('lotId')}></rl-field>
           ${device !== undefined && session.holds(may.operate) ? html`<button type="button" @click=${() => this.tell('new-lot')}>Open a lot</button>` : nothing}

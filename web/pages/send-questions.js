@@ -63,7 +63,7 @@ export function askColumns(rows, bench) {
               ${at === chosen ? lookOf(looks.get(at)) : nothing}
             </label>`)}
         </fieldset>
-        <p class="soft small">${bench === '' ? 'The bench that you name for these files will remember the answer for files with the same heads.' : `Bench ${bench} will remember the answer for files with the same heads.`}</p>
+        <p class="soft small">${bench === '' ? 'The bench that you name for these files will remember the answer for files with the same heads.' : `The bench \u201c${bench}\u201d will remember the answer for files with the same heads.`}</p>
         ${problem === '' ? nothing : html`<p class="problem" role="alert">${problem}</p>`}
         ${ends(html`<button type="submit" class="main">Read ${rows.length === 1 ? 'it' : `all ${rows.length}`} so</button>`, dialog)}
       </form>`,

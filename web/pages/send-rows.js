@@ -42,7 +42,7 @@ import { several } from '../numbers.js';
  * @property {Result | null} result
  */
 
-/** @typedef {'reading' | 'unreadable' | 'open' | 'lacking' | 'ready' | 'queued' | 'sending' | 'accepted' | 'duplicate' | 'refused' | 'sameBytes'} Stage */
+/** @typedef {'reading' | 'unreadable' | 'open' | 'lacking' | 'placeless' | 'ready' | 'queued' | 'sending' | 'accepted' | 'duplicate' | 'refused' | 'sameBytes'} Stage */
 
 export const purposes = /** @type {const} */ (['production', 'golden', 'through', 'check', 'study']);
 
@@ -115,7 +115,7 @@ export function isOpen(row) {
   return row.preview !== null && row.preview.trace === null && row.preview.candidates.length > 0 && row.columns === null;
 }
 
-/** @param {Row} row @param {Place} place @returns {Stage} */
+/** How a row stands. It is placeless while only the batch's place lacks something, and lacking where the row itself does. @param {Row} row @param {Place} place @returns {Stage} */
 export function stageOf(row, place) {
   if (row.sent === 'queued' || row.sent === 'sending')
     return row.sent;
@@ -129,13 +129,14 @@ export function stageOf(row, place) {
     return 'open';
   if (row.read === 'refused' || row.preview?.trace === null)
     return 'unreadable';
-  return Object.keys(lacking(row, place)).length > 0 ? 'lacking' : 'ready';
+  const missing = Object.keys(lacking(row, place));
+  return missing.length === 0 ? 'ready' : missing.some((field) => field === 'serial' || field in row.own || row.own.deviceId !== undefined) ? 'lacking' : 'placeless';
 }
 
 /** @type {Readonly<Record<Stage, string>>} */
-const groups = { reading: 'reading', unreadable: 'refused', open: 'asks', lacking: 'asks', ready: 'ready', queued: 'underWay', sending: 'underWay', accepted: 'sent', duplicate: 'sent', refused: 'refused', sameBytes: 'asks' };
+const groups = { reading: 'reading', unreadable: 'refused', open: 'asks', lacking: 'asks', placeless: 'placeless', ready: 'ready', queued: 'underWay', sending: 'underWay', accepted: 'sent', duplicate: 'sent', refused: 'refused', sameBytes: 'asks' };
 
-/** The groups that a batch is looked through by. @typedef {'all' | 'reading' | 'asks' | 'ready' | 'underWay' | 'sent' | 'refused'} Group */
+/** The groups that a batch is looked through by. @typedef {'all' | 'reading' | 'asks' | 'placeless' | 'ready' | 'underWay' | 'sent' | 'refused'} Group */
 
 /** @param {Stage} stage @returns {Group} */
 export function groupOf(stage) {
@@ -149,7 +150,7 @@ export function groupOf(stage) {
  * @returns {Record<Group, number>}
  */
 export function counted(rows, place) {
-  const counts = { all: rows.length, reading: 0, asks: 0, ready: 0, underWay: 0, sent: 0, refused: 0 };
+  const counts = { all: rows.length, reading: 0, asks: 0, placeless: 0, ready: 0, underWay: 0, sent: 0, refused: 0 };
   for (const row of rows)
     counts[groupOf(stageOf(row, place))] += 1;
   return counts;
@@ -254,7 +255,7 @@ export function outcomeSentence(rows, place) {
   const failing = verdicts.filter((outcome) => outcome === 'fail' || outcome === 'conditionalFail').length;
   const refused = number('refused') + number('unreadable');
   const parts = [
-    `${several(number('accepted'), 'run')} taken`,
+    number('accepted') === 0 ? 'No run taken' : `${several(number('accepted'), 'run')} taken`,
     ...(failing > 0 ? [`${failing} of them ${failing === 1 ? 'fails' : 'fail'}`] : []),
     ...(number('duplicate') > 0 ? [`${number('duplicate')} known already`] : []),
     ...(refused > 0 ? [`${refused} refused`] : []),

@@ -1,5 +1,6 @@
 // The columns of the table of files: what a file is, where it belongs, what was read in it, and how it stands.
 
+import { guard } from 'lit/directives/guard.js';
 import { badge } from '../parts/badges.js';
 import { html, nothing } from '../parts/element.js';
 import { dayAndTime, fileSize, frequency, margin, several } from '../numbers.js';
@@ -27,8 +28,18 @@ import '../plots/mini-plot.js';
  * @property {(row: Row) => void} remove
  */
 
+/**
+ * A cell is drawn anew only where its row, or what all rows share, is another one.
+ * @param {TableOf} page
+ * @param {readonly unknown[]} shared
+ * @returns {readonly Column[]}
+ */
+export function fileColumns(page, shared) {
+  return columnsOf(page).map((column) => ({ ...column, cell: (row) => guard([row, page.behind.has(row.id), ...shared], () => column.cell(row)) }));
+}
+
 /** @param {TableOf} page @returns {readonly Column[]} */
-export function fileColumns(page) {
+function columnsOf(page) {
   return [
     { key: 'name', label: 'File', head: true, cell: (row) => html`<button type="button" class="plain file-name" title="Look at ${row.name}" @click=${() => page.look(row)}>${row.name}</button><span class="soft small">${fileSize(row.file.size)}</span>` },
     { key: 'serial', label: 'Serial', cell: (row) => serialCell(row, page) },
@@ -44,7 +55,7 @@ export function fileColumns(page) {
 function serialCell(row, page) {
   const serial = serialOf(row);
   if (!maySend(row, page.place))
-    return html`<span>${row.result?.serial ?? serial}</span>`;
+    return html`<span class=${row.result === null ? 'soft' : ''}>${row.result?.serial ?? serial}</span>`;
   const problem = serialProblem(serial);
   return html`
     <input class="serial" aria-label="Serial number of ${row.name}" autocomplete="off" spellcheck="false" .value=${row.serial ?? row.guess} aria-invalid=${problem === '' ? 'false' : 'true'}
@@ -55,7 +66,7 @@ function serialCell(row, page) {
 
 /** @param {Row} row @param {Place} place */
 function maySend(row, place) {
-  return !['queued', 'sending', 'accepted', 'duplicate'].includes(stageOf(row, place));
+  return !['unreadable', 'queued', 'sending', 'accepted', 'duplicate'].includes(stageOf(row, place));
 }
 
 /** @param {Row} row @param {TableOf} page */
@@ -86,8 +97,8 @@ function foundCell(row) {
   const remarks = preview.notes.length + (preview.trace?.notes.filter((/** @type {any} */ note) => note.code !== 'reduced').length ?? 0);
   return html`
     <span class="small">${foundWords(preview)}</span>
-    ${preview.trace === null ? nothing : html`<br><span class="soft small">${spanWords(preview)}</span>`}
-    ${remarks > 0 ? html`<br><span class="soft small" title=${preview.notes.map((/** @type {any} */ note) => note.message).join('\n')}>${several(remarks, 'note')}${row.columnsFrom === 'bench' ? ', columns as the bench remembers' : row.columnsFrom === 'asked' ? ', columns as chosen' : ''}</span>` : nothing}`;
+    ${preview.trace === null ? nothing : html`<br><span class="soft small">${spanWords(preview)}${remarks > 0 ? ', ' : ''}</span>`}
+    ${remarks > 0 ? html`<span class="soft small" title=${preview.notes.map((/** @type {any} */ note) => note.message).join('\n')}>${several(remarks, 'note')}${row.columnsFrom === 'bench' ? ', columns as the bench remembers' : row.columnsFrom === 'asked' ? ', columns as chosen' : ''}</span>` : nothing}`;
 }
 
 /** @param {Row} row @param {TableOf} page */
@@ -97,7 +108,8 @@ function stageCell(row, page) {
     case 'reading': return html`<span class="soft">${row.read === 'reading' ? 'being read' : 'waits to be read'}</span>`;
     case 'unreadable': return html`${badge({ sign: '\u2717', words: 'refused', tone: 'bad' })}${issuesOf(row, page)}${row.problem === '' ? nothing : html` <button type="button" class="plain" @click=${() => page.readAgain(row)}>Read it again</button>`}`;
     case 'open': return html`${badge({ sign: '?', words: 'columns open', tone: 'doubt' })}<br><button type="button" @click=${() => page.askColumns(row)}>Say what they are</button>`;
-    case 'lacking': return html`${badge({ sign: '\u2026', words: 'lacks something', tone: 'doubt' })}<br><span class="small">${Object.values(lacking(row, page.place))[0]}</span>`;
+    case 'lacking': return html`${badge({ sign: '\u2026', words: 'lacks something', tone: 'doubt' })}<br><span class="small">${lacking(row, page.place).serial ?? Object.values(lacking(row, page.place))[0]}</span>`;
+    case 'placeless': return html`<span class="soft">waits for its place</span>`;
     case 'ready': return html`${badge({ sign: '\u25cb', words: 'ready', tone: '' })}`;
     case 'queued': return html`<span class="soft">waits to be sent</span>`;
     case 'sending': return html`<progress max="1" .value=${row.progress} aria-label="Sending ${row.name}"></progress><span class="soft small">${row.progress >= 1 ? 'being judged' : 'being sent'}</span>`;
@@ -127,7 +139,7 @@ function issuesOf(row, page) {
   const issues = row.result?.issues ?? row.preview?.issues ?? [];
   const whole = Math.max(issues.length, row.result === null ? row.preview?.issueCount ?? 0 : 0);
   const first = issues[0];
-  const said = first === undefined ? row.problem : `${first.line === null ? '' : `${capital(whereOf(first))}: `}${first.message}`;
+  const said = row.result?.issues.some(({ code }) => code === 'sameFileOtherUnit') ? `${first.message.split('. ')[0]}.` : first === undefined ? row.problem : `${first.line === null ? '' : `${capital(whereOf(first))}: `}${first.message}`;
   return html`<br><span class="small issue">${said}</span>${whole > 1 ? html` <button type="button" class="plain" @click=${() => page.look(row)}>All ${whole}</button>` : nothing} `;
 }
 

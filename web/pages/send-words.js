@@ -1,6 +1,6 @@
 // Columns and choices of columns in words. Pure.
 
-import { count, frequency } from '../numbers.js';
+import { count, frequency, several } from '../numbers.js';
 
 /** @typedef {{ column: number, head: string, quantity: string, unit: string }} FoundColumn */
 /** @typedef {{ column: number, quantity: string, unit: string }} ColumnChoice */
@@ -51,7 +51,7 @@ export function foundWords(preview) {
   const used = preview.columns.filter((/** @type {FoundColumn} */ column) => column.quantity !== 'ignore');
   if (used.length > 0)
     return used.map(holds).join(', ');
-  return preview.reader === 'touchstone' ? `Touchstone${preview.choices?.parameter ? `, ${preview.choices.parameter}` : ''}` : `${preview.columns.length} columns`;
+  return preview.reader === 'touchstone' ? `Touchstone${preview.choices?.parameter ? `, ${preview.choices.parameter}` : ''}` : preview.columns.length === 0 ? 'nothing' : several(preview.columns.length, 'column');
 }
 
 /** How far a trace reaches: "801 points, 10 Hz to 100 kHz". @param {any} preview */

@@ -28,14 +28,15 @@ import './send-place.js';
 await ownStyles(import.meta.url);
 
 const pageRows = 50;
+const rowsAFrame = 10;
 const shape = { device: text(), lot: text(), condition: text(), bench: text(), purpose: oneOf(purposes) };
 
 /** @type {readonly (readonly [Group, string])[]} */
-const groupWords = [['all', 'All'], ['asks', 'Ask you'], ['refused', 'Refused'], ['reading', 'Being read'], ['ready', 'Ready'], ['underWay', 'Under way'], ['sent', 'Taken']];
+const groupWords = [['all', 'All'], ['asks', 'Need you'], ['refused', 'Refused'], ['reading', 'Being read'], ['placeless', 'Lack a place'], ['ready', 'Ready'], ['underWay', 'Under way'], ['sent', 'Taken']];
 
 class SendPage extends Page {
   static properties = {
-    devices: { state: true }, lots: { state: true }, refusal: { state: true }, group: { state: true }, from: { state: true }, tried: { state: true }, making: { state: true }, limits: { state: true },
+    devices: { state: true }, lots: { state: true }, refusal: { state: true }, group: { state: true }, from: { state: true }, drawn: { state: true }, tried: { state: true }, making: { state: true }, limits: { state: true },
   };
 
   constructor() {
@@ -49,6 +50,8 @@ class SendPage extends Page {
     /** @type {Group} */
     this.group = 'all';
     this.from = 0;
+    /** How many rows of a page are drawn by now: they come a few a frame, so that no task is long. */
+    this.drawn = rowsAFrame;
     /** Whether somebody tried to send, so that what is missing is marked. */
     this.tried = false;
     /** Whether device, mask and lot are being made from the file. */
@@ -132,6 +135,17 @@ class SendPage extends Page {
     }
   }
 
+  /** @param {import('lit').PropertyValues} changed */
+  willUpdate(changed) {
+    if (changed.has('group') || changed.has('from'))
+      this.drawn = rowsAFrame;
+  }
+
+  updated() {
+    if (this.drawn < Math.min(pageRows, batch.rows.length))
+      requestAnimationFrame(() => { this.drawn += rowsAFrame; });
+  }
+
   /** @param {readonly File[]} files */
   take(files) {
     if (files.length === 0)
@@ -178,7 +192,7 @@ class SendPage extends Page {
       return this.refusal === null ? html`<rl-busy label="Reading devices and benches"></rl-busy>` : nothing;
     const { place } = batch;
     const counts = counted(rows, place);
-    const missing = this.tried ? merged(rows.filter((row) => stageOf(row, place) === 'lacking').map((row) => lacking({ ...row, own: {} }, place))) : {};
+    const missing = this.tried ? merged(rows.filter((row) => ['lacking', 'placeless'].includes(stageOf(row, place))).map((row) => lacking({ ...row, own: {} }, place))) : {};
     return html`
       ${this.devices.length === 0 ? this.noDevice(rows) : html`
         <section class="panel" aria-label="Where the runs belong">
@@ -254,7 +268,7 @@ class SendPage extends Page {
                 <button type="button" aria-pressed=${name === group ? 'true' : 'false'} @click=${() => { this.group = name; this.from = 0; }}>${words} ${counts[name]}</button>`)}
             </div>`}
         </div>
-        <rl-data-table class="files" cards caption="Files" caption-unseen .columns=${fileColumns(this.tableOf(rows))} .rows=${shown}></rl-data-table>
+        <rl-data-table class="files" cards caption="Files" caption-unseen .columns=${fileColumns(this.tableOf(rows), [place, this.devices, this.lots])} .rows=${shown.slice(0, this.drawn)}></rl-data-table>
         ${within.length <= pageRows ? nothing : html`
           <div class="row">
             <button type="button" ?disabled=${from === 0} @click=${() => { this.from = from - pageRows; }}>Files before</button>

@@ -32,6 +32,12 @@ test('A file with a device of its own has no lot and no condition of the batch',
   assert.equal(rows.stageOf(own, place), 'lacking');
 });
 
+test('What the batch lacks is not asked of each file', () => {
+  assert.equal(rows.stageOf(row(1), rows.noPlace), 'placeless');
+  assert.equal(rows.stageOf(row(1, { serial: '' }), rows.noPlace), 'lacking');
+  assert.equal(rows.stageOf(row(1, { own: { bench: '' } }), place), 'lacking');
+});
+
 test('Each state of a file has its stage', () => {
   const open = row(1, { preview: { ...read.preview, trace: null, candidates: [[]] } });
   const stages = [
@@ -50,7 +56,7 @@ test('Each state of a file has its stage', () => {
   ];
   assert.deepEqual(stages.map(([one]) => rows.stageOf(one, place)), stages.map(([, stage]) => stage));
   const counts = rows.counted(stages.map(([one]) => one), place);
-  assert.deepEqual(counts, { all: 12, reading: 1, asks: 2, ready: 1, underWay: 2, sent: 2, refused: 4 });
+  assert.deepEqual(counts, { all: 12, reading: 1, asks: 2, placeless: 0, ready: 1, underWay: 2, sent: 2, refused: 4 });
 });
 
 test('Open files are asked about once for the same heads, and apart without', () => {
