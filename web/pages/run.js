@@ -79,19 +79,27 @@ class RunPage extends Page {
   }
 
   async loadCurves() {
-    const answer = await ask(`${this.at}/overlay?quantity=gain&points=${points}`, { signal: this.leaving.signal });
-    this.curveRefusal = answer.ok ? null : answer;
-    if (answer.ok)
-      this.upper = answer.body;
-    await this.loadLower();
+    const [upper, lower] = await Promise.all([this.overlay('gain'), this.overlay(this.state.second)]);
+    this.curveRefusal = [upper, lower].find((answer) => !answer.ok) ?? null;
+    if (!upper.ok || !lower.ok)
+      return;
+    this.upper = upper.body;
+    this.lower = filled(lower.body);
   }
 
   async loadLower() {
     const { second } = this.state;
-    const answer = await ask(`${this.at}/overlay?quantity=${second}&points=${points}`, { signal: this.leaving.signal });
-    this.curveRefusal = answer.ok ? this.curveRefusal : answer;
-    if (answer.ok && second === this.state.second)
-      this.lower = answer.body.runs[0]?.values.some((/** @type {number | null} */ value) => value !== null) ? answer.body : null;
+    const answer = await this.overlay(second);
+    if (second !== this.state.second)
+      return;
+    this.curveRefusal = answer.ok ? null : answer;
+    if (answer.ok)
+      this.lower = filled(answer.body);
+  }
+
+  /** @param {string} quantity */
+  overlay(quantity) {
+    return ask(`${this.at}/overlay?quantity=${quantity}&points=${points}`, { signal: this.leaving.signal });
   }
 
   render() {
@@ -107,8 +115,10 @@ class RunPage extends Page {
         <section class="panel" aria-label="Measures">
           <rl-run-measures .runId=${this.run.id} .given=${this.verdict.measures} @at=${(/** @type {CustomEvent} */ event) => this.moveTo(event.detail)}></rl-run-measures>
         </section>
-        <section class="panel" aria-labelledby="provenance"><h2 id="provenance">Where it comes from</h2>${provenanceOf(this.run)}</section>
-        <section class="panel" aria-labelledby="history"><h2 id="history">What was done to it</h2>${historyOf(this.run)}</section>
+        <div class="stack">
+          <section class="panel" aria-labelledby="provenance"><h2 id="provenance">Where it comes from</h2>${provenanceOf(this.run)}</section>
+          <section class="panel" aria-labelledby="history"><h2 id="history">What was done to it</h2>${historyOf(this.run)}</section>
+        </div>
       </div>`;
   }
 
@@ -169,7 +179,7 @@ class RunPage extends Page {
     return html`
       <div class="page-head"><h2 id="verdict">Verdict</h2><rl-outcome outcome=${verdict.outcome}></rl-outcome></div>
       ${worst === null ? nothing : html`<p>${worst.outcome === 'pass' ? 'The least margin is' : 'What decides is'} <strong>${worst.criterion}</strong>: ${worst.margin === null ? 'no margin' : margin(worst.margin, worst.unit)}${worst.frequencyHz === null ? '' : html` at <button type="button" class="plain" title="Move the cursor there" @click=${() => this.moveTo(worst.frequencyHz)}>${frequency(worst.frequencyHz, 5)}</button>`}.</p>`}
-      <rl-data-table caption="Criteria of the mask" caption-unseen .columns=${criterionColumns((atHz) => this.moveTo(atHz))} .rows=${worstFirst(verdict.criteria)} .keyOf=${(/** @type {any} */ criterion) => criterion.name}></rl-data-table>
+      <rl-data-table cards caption="Criteria of the mask" caption-unseen .columns=${criterionColumns((atHz) => this.moveTo(atHz))} .rows=${worstFirst(verdict.criteria)} .keyOf=${(/** @type {any} */ criterion) => criterion.name}></rl-data-table>
       <p class="soft small">Mask <a href="/masks/${verdict.maskId}">revision ${verdict.maskRevision}</a>, numbers of engine ${verdict.engine}. ${verdict.pinned ? 'A signed decision rests on this verdict: it does not change any more.' : verdict.stored ? '' : 'It was worked out just now and is about to be kept.'}</p>`;
   }
 
@@ -209,6 +219,11 @@ class RunPage extends Page {
     say(sentence);
     await this.load();
   }
+}
+
+/** An overlay whose run has the quantity, or null. @param {any} overlay */
+function filled(overlay) {
+  return overlay.runs[0]?.values.some((/** @type {number | null} */ value) => value !== null) ? overlay : null;
 }
 
 customElements.define('rl-page-run', RunPage);

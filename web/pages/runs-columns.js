@@ -2,7 +2,7 @@
 
 import { badge } from '../parts/badges.js';
 import { html, nothing } from '../parts/element.js';
-import { when } from '../parts/when.js';
+import { moment } from '../parts/when.js';
 import { frequency, margin } from '../numbers.js';
 import '../parts/badges.js';
 
@@ -20,7 +20,7 @@ export function runColumns(picked, pick) {
     { key: 'device', label: 'Device', sort: (run) => `${run.partNumber} ${run.revision}`, cell: (run) => html`<span class="nowrap">${run.partNumber} ${run.revision}</span>` },
     { key: 'lot', label: 'Lot', sort: (run) => run.lotNumber, cell: (run) => html`${run.lotNumber ?? html`<span class="soft">none</span>`}<br><span class="soft small">${run.condition}</span>` },
     { key: 'bench', label: 'Bench', sort: (run) => run.bench, cell: (run) => run.bench },
-    { key: 'measured', label: 'Measured', sort: (run) => Date.parse(run.measuredAt), cell: (run) => when(run.measuredAt, '') },
+    { key: 'measured', label: 'Measured', sort: (run) => Date.parse(run.measuredAt), cell: (run) => moment(run.measuredAt) },
     { key: 'outcome', label: 'Verdict', sort: (run) => run.outcome, cell: verdictCell },
     { key: 'worst', label: 'Least margin', sort: (run) => run.worst?.margin, cell: worstCell },
     { key: 'standing', label: 'Counts', sort: (run) => run.standing, cell: standingCell },

@@ -106,7 +106,7 @@ class RunsPage extends Page {
         <rl-field label="Outcome" name="outcome" .options=${outcomeOptions} .value=${filter.outcome} @change=${this.onFilter}></rl-field>
         <rl-field label="Purpose" name="purpose" .options=${[['', 'all'], ...purposeOptions]} .value=${filter.purpose} @change=${this.onFilter}></rl-field>
         <rl-field label="Measured from" name="from" type="date" .value=${filter.from} @change=${this.onFilter}></rl-field>
-        <rl-field label="to" name="to" type="date" .value=${filter.to} @change=${this.onFilter}></rl-field>
+        <rl-field label="Measured to" name="to" type="date" .value=${filter.to} @change=${this.onFilter}></rl-field>
       </form>
       <rl-refusal .answer=${this.refusal} @again=${this.load}></rl-refusal>
       ${this.pickedBar()}
