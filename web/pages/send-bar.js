@@ -12,9 +12,9 @@ import { groupOf, lacking, openGroups, outcomeSentence, stageOf } from './send-r
  * What can be done now, and how far it is.
  * @param {Row[]} rows
  * @param {Record<Group, number>} counts
- * @param {{ tried: boolean, lotNumber: string, send: () => void }} page
+ * @param {{ tried: boolean, hasDevices: boolean, lotNumber: string, send: () => void }} page
  */
-export function barOf(rows, counts, { tried, lotNumber, send }) {
+export function barOf(rows, counts, { tried, hasDevices, lotNumber, send }) {
   const queue = batch.sending;
   const over = counts.sent + rows.filter((row) => ['refused', 'sameBytes'].includes(stageOf(row, batch.place))).length;
   const sendable = counts.ready + counts.placeless;
@@ -23,7 +23,7 @@ export function barOf(rows, counts, { tried, lotNumber, send }) {
     const part = rows.reduce((sum, row) => sum + (row.sent === 'sending' ? row.progress : 0), over) / whole;
     return html`
       <section class="panel send-bar" aria-label="Sending">
-        <div class="grows"><p>${several(queue.length, 'file')} to go, ${outcomeSentence(rows, batch.place)}</p><progress max="1" .value=${part} aria-label="Sent"></progress>${trouble(queue)}</div>
+        <div class="grows"><p>${several(queue.length, 'file')} to go. ${outcomeSentence(rows, batch.place)}</p><progress max="1" .value=${part} aria-label="Sent"></progress>${trouble(queue)}</div>
         <button type="button" @click=${() => batch.stop()}>Stop</button>
       </section>`;
   }
@@ -33,12 +33,12 @@ export function barOf(rows, counts, { tried, lotNumber, send }) {
       <div class="grows">
         ${over > 0 ? html`<p role="status">${outcomeSentence(rows, batch.place)}</p>` : nothing}
         ${counts.reading > 0 ? html`<p class="soft">${several(counts.reading, 'file is', 'files are')} being read.</p>${trouble(batch.previews)}` : nothing}
-        ${counts.placeless > 0 ? html`<p>${several(counts.placeless, 'file lacks', 'files lack')} ${missingWords(rows)}: choose above.</p>` : nothing}
+        ${counts.placeless > 0 && hasDevices ? html`<p>${several(counts.placeless, 'file lacks', 'files lack')} ${missingWords(rows)}: give it above.</p>` : nothing}
         ${counts.asks > 0 && tried ? html`<p>${several(counts.asks, 'file asks', 'files ask')} you something first; the others can go.</p>` : nothing}
       </div>
       ${over > 0 && batch.place.lotId !== '' ? html`<a class="button" href="/lots/${batch.place.lotId}">Go to lot ${lotNumber}</a>` : nothing}
       ${counts.sent > 0 ? html`<button type="button" @click=${() => batch.remove(batch.rows.filter((row) => groupOf(stageOf(row, batch.place)) === 'sent').map((row) => row.id))}>Clear what is taken</button>` : nothing}
-      ${sendable > 0 ? html`<button type="button" class="main" @click=${send}>${counts.ready === 0 ? 'Send' : `Send ${several(counts.ready, 'file')}`}</button>` : nothing}
+      ${sendable > 0 && hasDevices ? html`<button type="button" class="main" @click=${send}>${counts.ready === 0 ? 'Send' : `Send ${several(counts.ready, 'file')}`}</button>` : nothing}
     </section>`;
 }
 

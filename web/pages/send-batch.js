@@ -3,7 +3,7 @@
 
 import { ask, send, sendForm } from '../api.js';
 import { session } from '../session.js';
-import { fieldsOf, headsOf, isOpen, meaningOf, noPlace, openGroups, rowOf, stageOf } from './send-rows.js';
+import { fieldsOf, headsOf, isOpen, meaningOf, noPlace, openGroups, placeOf, rowOf, stageOf } from './send-rows.js';
 import { SendQueue } from './send-queue.js';
 
 /** @typedef {import('./send-rows.js').Row} Row */
@@ -138,14 +138,14 @@ class Batch extends EventTarget {
   sendReady(which = (row) => stageOf(row, this.place) === 'ready') {
     const ready = this.rows.filter(which);
     for (const row of ready)
-      this.change(row.id, { sent: 'queued', progress: 0, result: null, problem: '' });
+      this.change(row.id, { sent: 'queued', at: placeOf({ ...row, at: null }, this.place), progress: 0, result: null, problem: '' });
     this.sending.add(ready.map((row) => row.id));
   }
 
   /** Takes what has not begun out of the queue again. */
   stop() {
     for (const id of this.sending.drop(() => true))
-      this.change(id, { sent: 'no' });
+      this.change(id, { sent: 'no', at: null });
     this.sending.resume();
   }
 
@@ -207,7 +207,7 @@ class Batch extends EventTarget {
 
   /** A bench that a file has just made, or columns that it has just learnt, are known from now on. @param {Row} row */
   #learn(row) {
-    const bench = row.own.bench ?? this.place.bench;
+    const { bench } = placeOf(row, this.place);
     if (this.benchOf(bench) === undefined || row.columnsFrom === 'asked')
       this.#benchesDue ??= setTimeout(() => void this.#askBenches(), 1_000);
   }

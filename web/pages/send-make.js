@@ -158,6 +158,7 @@ class MakeFromFile extends Element {
   }
 
   lookAround() {
+    this.answer = null;
     const form = this.querySelector('li.current form');
     const trace = this.row?.preview?.trace;
     if (!(form instanceof HTMLFormElement) || !trace)

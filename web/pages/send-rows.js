@@ -37,6 +37,7 @@ import { several } from '../numbers.js';
  * @property {any} columns           columns chosen, as they are sent
  * @property {'' | 'bench' | 'asked'} columnsFrom
  * @property {boolean} acknowledged  that the same bytes are meant for another unit too
+ * @property {Place | null} at       where it was sent for: what the batch says later does not move it
  * @property {Sent} sent
  * @property {number} progress       0 to 1 while it is sent
  * @property {Result | null} result
@@ -56,7 +57,7 @@ export const noPlace = Object.freeze({ deviceId: '', lotId: '', bench: '', purpo
 export function rowOf(id, file) {
   return {
     id, file, name: file.name, guess: serialInName(file.name), serial: null, own: {}, read: 'waiting', preview: null, problem: '', columns: null, columnsFrom: '',
-    acknowledged: false, sent: 'no', progress: 0, result: null,
+    acknowledged: false, at: null, sent: 'no', progress: 0, result: null,
   };
 }
 
@@ -82,6 +83,8 @@ export function serialOf(row) {
 
 /** Where a row belongs: the batch's place and what differs for it. A device of its own has no lot and condition of the batch's. @param {Row} row @param {Place} place @returns {Place} */
 export function placeOf(row, place) {
+  if (row.at !== null)
+    return row.at;
   const otherDevice = row.own.deviceId !== undefined && row.own.deviceId !== place.deviceId;
   return { ...place, ...(otherDevice ? { lotId: '', conditionId: '' } : {}), ...row.own };
 }
@@ -238,7 +241,7 @@ export function meaningOf(answer) {
     return { kind: 'result', result };
   const { status, sentence } = answer;
   if (answer.code === 'stopped' || status === 401 || status === 403)
-    return { kind: 'stop', sentence };
+    return { kind: 'stop', sentence: status === 401 ? 'You are not signed in any more.' : sentence };
   return { kind: status === 0 || status === 429 || status >= 500 ? 'again' : 'refused', sentence: answer.ok ? 'The server did not say what became of the file.' : sentence };
 }
 

@@ -25,7 +25,6 @@ import '../plots/mini-plot.js';
  * @property {(row: Row) => void} askSameBytes
  * @property {(row: Row) => void} sendAgain
  * @property {(row: Row) => void} readAgain
- * @property {(row: Row) => void} remove
  */
 
 /**

@@ -12,6 +12,8 @@ import { makeLot } from './lots-open.js';
 import { keepBench, keptBench } from './send-bench.js';
 import { batch } from './send-batch.js';
 import { barOf, questionsOf } from './send-bar.js';
+import { invitation, noDevice } from './send-empty.js';
+import { OpenLots } from './send-lots.js';
 import { askColumns, askSameBytes } from './send-questions.js';
 import { counted, groupOf, headsOf, isOpen, lacking, placeOf, purposes, repeated, stageOf } from './send-rows.js';
 import { fileColumns } from './send-table.js';
@@ -36,15 +38,14 @@ const groupWords = [['all', 'All'], ['asks', 'Need you'], ['refused', 'Refused']
 
 class SendPage extends Page {
   static properties = {
-    devices: { state: true }, lots: { state: true }, refusal: { state: true }, group: { state: true }, from: { state: true }, drawn: { state: true }, tried: { state: true }, making: { state: true }, limits: { state: true },
+    devices: { state: true }, refusal: { state: true }, group: { state: true }, from: { state: true }, drawn: { state: true }, tried: { state: true }, making: { state: true }, limits: { state: true },
   };
 
   constructor() {
     super();
     /** @type {any[] | null} */
     this.devices = null;
-    /** @type {Map<string, any[]>} open lots by device */
-    this.lots = new Map();
+    this.lots = new OpenLots();
     /** @type {import('../api.js').Answer | null} */
     this.refusal = null;
     /** @type {Group} */
@@ -117,19 +118,19 @@ class SendPage extends Page {
       batch.placeAt({ conditionId: '' });
   }
 
-  /** @param {string} deviceId */
-  async loadLots(deviceId) {
-    if (deviceId === '' || this.lots.has(deviceId))
+  /** @param {string} deviceId @param {{ anew?: boolean }} [how] */
+  async loadLots(deviceId, { anew = false } = {}) {
+    const answer = await this.lots.read(deviceId, { anew, signal: this.leaving.signal });
+    if (answer === null)
       return;
-    const answer = await all(`/api/lots?state=open&limit=200&device=${encodeURIComponent(deviceId)}`, { signal: this.leaving.signal });
+    this.requestUpdate();
     if (!answer.ok) {
-      this.refusal = answer.code === 'stopped' ? this.refusal : answer;
+      this.refusal = answer.code === 'stopped' || anew ? this.refusal : answer;
       return;
     }
 
-    this.lots = new Map([...this.lots, [deviceId, answer.items]]);
     const { lotId } = batch.place;
-    if (deviceId === batch.place.deviceId && lotId !== '' && !answer.items.some(({ id }) => id === lotId)) {
+    if (!anew && deviceId === batch.place.deviceId && lotId !== '' && !answer.items.some(({ id }) => id === lotId)) {
       batch.placeAt({ lotId: '' });
       say('The lot that the address names is not open: it takes no runs. Choose another one, or have it reopened.', { bad: true });
     }
@@ -160,11 +161,6 @@ class SendPage extends Page {
     return this.devices?.find(({ id }) => id === deviceId);
   }
 
-  /** @param {string} lotId */
-  lotOf(lotId) {
-    return [...this.lots.values()].flat().find(({ id }) => id === lotId);
-  }
-
   render() {
     const rows = batch.rows;
     const picker = html`
@@ -172,18 +168,7 @@ class SendPage extends Page {
     return html`
       <div class="page-head"><h1>Send files</h1>${rows.length === 0 ? nothing : html`<div class="row">${picker}<button type="button" @click=${this.clear}>Clear the table</button></div>`}</div>
       <rl-refusal .answer=${this.refusal} @again=${this.load}></rl-refusal>
-      ${rows.length === 0 ? this.invitation(picker) : this.filled(rows)}`;
-  }
-
-  /** @param {unknown} picker */
-  invitation(picker) {
-    return html`
-      <div class="empty drop-place">
-        <h2>Drop sweep files here, or anywhere in the app</h2>
-        <p>CSV and other delimited text, or Touchstone. Every file is read and shown first, with its curve and what is wrong with it; nothing is stored before you send it.</p>
-        <p class="soft">The serial number comes from the file's name, such as <code>SN0042_sweep.csv</code>, and can be typed over.</p>
-        ${picker}
-      </div>`;
+      ${rows.length === 0 ? invitation(picker) : this.filled(rows)}`;
   }
 
   /** @param {Row[]} rows */
@@ -194,31 +179,16 @@ class SendPage extends Page {
     const counts = counted(rows, place);
     const missing = this.tried ? merged(rows.filter((row) => ['lacking', 'placeless'].includes(stageOf(row, place))).map((row) => lacking({ ...row, own: {} }, place))) : {};
     return html`
-      ${this.devices.length === 0 ? this.noDevice(rows) : html`
+      ${this.devices.length === 0 ? this.making ? nothing : noDevice(rows.some((row) => row.preview?.trace), () => { this.making = true; }) : html`
         <section class="panel" aria-label="Where the runs belong">
-          <rl-send-place .place=${place} .devices=${this.devices} .benches=${batch.benches} .lots=${this.lots.get(place.deviceId)} .lacking=${missing}
+          <rl-send-place .place=${place} .devices=${this.devices} .benches=${batch.benches} .lots=${this.lots.of(place.deviceId)} .lacking=${missing}
             @place=${this.onPlace} @circumstances=${(/** @type {CustomEvent} */ event) => { batch.circumstances = event.detail; }} @new-lot=${this.openLot}></rl-send-place>
         </section>`}
       ${this.making ? this.maker(rows) : nothing}
-      ${barOf(rows, counts, { tried: this.tried, lotNumber: this.lotOf(place.lotId)?.number ?? '', send: () => this.sendAll() })}
+      ${barOf(rows, counts, { tried: this.tried, hasDevices: this.devices.length > 0, lotNumber: this.lots.find(place.lotId)?.number ?? '', send: () => this.sendAll() })}
       ${questionsOf(rows, { columns: (row) => this.askColumns(row), sameBytes: (same) => this.askSameBytes(same), again: (some) => this.sendAgain(some) })}
       ${this.table(rows, counts)}
       ${rows.length === 1 && !this.making ? this.closely(rows[0]) : nothing}`;
-  }
-
-  /** A lab without a device: the file can be looked at, and made one of. @param {Row[]} rows */
-  noDevice(rows) {
-    if (this.making)
-      return nothing;
-    const readable = rows.find((row) => row.preview?.trace);
-    return html`
-      <div class="empty">
-        <h2>No device is described yet</h2>
-        <p>The file can be looked at all the same. To keep its run, the lab needs the device that it is of, a mask to judge it by, and a lot.</p>
-        ${session.holds(may.engineer)
-          ? readable !== undefined ? html`<button type="button" class="main" @click=${() => { this.making = true; }}>Make them from this file</button>` : html`<p class="soft">Once a file here can be read, they can be made from it.</p>`
-          : html`<p class="soft">Describing a device is an engineer's work. Ask one, then come back: the files stay in this table while the window is open.</p>`}
-      </div>`;
   }
 
   /** @param {Row[]} rows */
@@ -239,12 +209,12 @@ class SendPage extends Page {
     const { device, lot } = event.detail;
     if (device !== undefined) {
       this.devices = [...this.devices ?? [], device];
-      this.lots = new Map([...this.lots, [device.id, []]]);
+      this.lots.know(device.id, []);
       batch.placeAt({ deviceId: device.id, lotId: '', conditionId: '' });
     }
 
     if (lot !== undefined) {
-      this.lots = new Map([...this.lots, [lot.deviceId, [lot, ...this.lots.get(lot.deviceId) ?? []]]]);
+      this.lots.add(lot);
       batch.placeAt({ lotId: lot.id });
     }
 
@@ -268,7 +238,7 @@ class SendPage extends Page {
                 <button type="button" aria-pressed=${name === group ? 'true' : 'false'} @click=${() => { this.group = name; this.from = 0; }}>${words} ${counts[name]}</button>`)}
             </div>`}
         </div>
-        <rl-data-table class="files" cards caption="Files" caption-unseen .columns=${fileColumns(this.tableOf(rows), [place, this.devices, this.lots])} .rows=${shown.slice(0, this.drawn)}></rl-data-table>
+        <rl-data-table class="files" cards caption="Files" caption-unseen .columns=${fileColumns(this.tableOf(rows), [place, this.devices, this.lots.state])} .rows=${shown.slice(0, this.drawn)}></rl-data-table>
         ${within.length <= pageRows ? nothing : html`
           <div class="row">
             <button type="button" ?disabled=${from === 0} @click=${() => { this.from = from - pageRows; }}>Files before</button>
@@ -284,14 +254,13 @@ class SendPage extends Page {
       place: batch.place,
       behind: repeated(rows, batch.place),
       deviceOf: (id) => this.deviceOf(id),
-      lotOf: (id) => this.lotOf(id),
+      lotOf: (id) => this.lots.find(id),
       look: (row) => this.look(row),
       typeSerial: (row, serial) => batch.change(row.id, { serial: serial.trim() === row.guess ? null : serial.trim() }),
       askColumns: (row) => void this.askColumns(row),
       askSameBytes: (row) => void this.askSameBytes([row]),
       sendAgain: (row) => this.sendAgain([row]),
       readAgain: (row) => batch.readAgain(row),
-      remove: (row) => batch.remove([row.id]),
     };
   }
 
@@ -300,7 +269,7 @@ class SendPage extends Page {
     return row.preview === null ? nothing : html`
       <section class="panel" aria-label=${row.name}>
         ${this.lookAt(row)}
-        ${session.holds(may.engineer) && row.preview.trace !== null && row.result === null ? html`<p class="soft">Is it of a device that the lab does not know? <button type="button" class="plain" @click=${this.makeAnother}>Make device, mask and lot from it</button></p>` : nothing}
+        ${session.holds(may.engineer) && (this.devices ?? []).length > 0 && row.preview.trace !== null && row.result === null ? html`<p class="soft">Is it of a device that the lab does not know? <button type="button" class="plain" @click=${this.makeAnother}>Make device, mask and lot from it</button></p>` : nothing}
       </section>`;
   }
 
@@ -312,13 +281,19 @@ class SendPage extends Page {
   /** @param {Row} row @param {() => void} [then] */
   lookAt(row, then = () => {}) {
     const whole = placeOf(row, batch.place);
-    void this.loadLots(whole.deviceId);
-    return html`<rl-file-look class="stack" .row=${row} .place=${batch.place} .devices=${this.devices ?? []} .lots=${this.lots.get(whole.deviceId)}
-      @own=${(/** @type {CustomEvent} */ event) => batch.change(row.id, { own: event.detail })} @remove=${() => { batch.remove([row.id]); then(); }}></rl-file-look>`;
+    return html`<rl-file-look class="stack" .row=${row} .place=${batch.place} .devices=${this.devices ?? []} .lots=${this.lots.of(whole.deviceId)}
+      @own=${(/** @type {CustomEvent} */ event) => this.placeOne(row, event.detail)} @remove=${() => { batch.remove([row.id]); then(); }}></rl-file-look>`;
+  }
+
+  /** @param {Row} row @param {Row['own']} own */
+  placeOne(row, own) {
+    batch.change(row.id, { own });
+    void this.loadLots(placeOf({ ...row, own }, batch.place).deviceId);
   }
 
   /** @param {Row} row */
   look(row) {
+    void this.loadLots(placeOf(row, batch.place).deviceId);
     void openDialog({
       heading: row.name,
       wide: true,
@@ -347,7 +322,7 @@ class SendPage extends Page {
   /** @param {Row[]} rows */
   sendAgain(rows) {
     for (const row of rows)
-      batch.change(row.id, { sent: 'no', result: null, problem: '' });
+      batch.change(row.id, { sent: 'no', at: null, result: null, problem: '' });
     const ids = rows.map((row) => row.id);
     this.sendAll((/** @type {Row} */ row) => ids.includes(row.id));
   }
@@ -367,13 +342,11 @@ class SendPage extends Page {
     batch.sendReady((row) => ids.has(row.id));
   }
 
-  /** Says what a batch came to once nothing is under way any more, and asks what came up. */
+  /** Counts the lots anew once nothing is under way any more. */
   watchSending() {
     const isSending = batch.sending.length > 0;
-    if (this.wasSending && !isSending) {
-      this.lots = new Map();
-      void this.loadLots(batch.place.deviceId);
-    }
+    if (this.wasSending && !isSending)
+      void this.loadLots(batch.place.deviceId, { anew: true });
 
     this.wasSending = isSending;
   }
@@ -402,7 +375,7 @@ class SendPage extends Page {
     const lot = await makeLot(this.devices ?? [], device?.id);
     if (lot === null)
       return;
-    this.lots = new Map([...this.lots, [lot.deviceId, [lot, ...this.lots.get(lot.deviceId) ?? []]]]);
+    this.lots.add(lot);
     batch.placeAt({ deviceId: lot.deviceId, lotId: lot.id, ...(lot.deviceId === device?.id ? {} : { conditionId: '' }) });
     this.keepPlace();
   }

@@ -32,6 +32,11 @@ test('A file with a device of its own has no lot and no condition of the batch',
   assert.equal(rows.stageOf(own, place), 'lacking');
 });
 
+test('What was sent stays where it was sent for, whatever the batch says later', () => {
+  const sent = row(1, { at: { ...place, lotId: 'first' }, own: {} });
+  assert.equal(Object.fromEntries(rows.fieldsOf(sent, { ...place, lotId: 'second' })).lot, 'first');
+});
+
 test('What the batch lacks is not asked of each file', () => {
   assert.equal(rows.stageOf(row(1), rows.noPlace), 'placeless');
   assert.equal(rows.stageOf(row(1, { serial: '' }), rows.noPlace), 'lacking');
@@ -82,7 +87,7 @@ test('An answer is a result, a refusal, a reason to try again, or a reason to st
   assert.equal(rows.meaningOf(answer(201, { results: [{ outcome: 'accepted' }] })).kind, 'result');
   assert.equal(rows.meaningOf(answer(422, { results: [{ outcome: 'refused' }] })).result.outcome, 'refused');
   assert.deepEqual([0, 429, 500, 503].map((status) => rows.meaningOf(answer(status)).kind), ['again', 'again', 'again', 'again']);
-  assert.deepEqual([401, 403].map((status) => rows.meaningOf(answer(status)).kind), ['stop', 'stop']);
+  assert.deepEqual([401, 403].map((status) => rows.meaningOf(answer(status))), [{ kind: 'stop', sentence: 'You are not signed in any more.' }, { kind: 'stop', sentence: 'Said.' }]);
   assert.equal(rows.meaningOf(answer(0, null, 'stopped')).kind, 'stop');
   assert.deepEqual([413, 422].map((status) => rows.meaningOf(answer(status))), [{ kind: 'refused', sentence: 'Said.' }, { kind: 'refused', sentence: 'Said.' }]);
 });
