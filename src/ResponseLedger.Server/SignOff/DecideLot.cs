@@ -29,26 +29,26 @@ internal static class DecideLot
         CancellationToken cancellationToken)
     {
         var setting = await SettingOfLotAsync(db, id, cancellationToken);
-        RefuseRole(setting, user);
+        await SignerStanding.RequireAsync(db, user, SignersOf(setting), cancellationToken);
         await password.CheckAsync(user, request.Password, cancellationToken);
 
-        var decision = await acts.RunAsync(CurrentActor.Of(user), (act, token) => DecideAsync(act, id, request, user, material, token), cancellationToken);
+        var decision = await acts.RunAsync(CurrentActor.Of(user), (act, token) => DecideAsync(act, id, request, material, token), cancellationToken);
         return TypedResults.Created($"/api/decisions/{decision.Id}", DecisionView.Of(decision, undone: null, withRecord: true));
     }
 
     private static async Task<Decision> DecideAsync(
-        Act act, Guid lotId, NewDecision request, ClaimsPrincipal user, JudgingMaterial material, CancellationToken cancellationToken)
+        Act act, Guid lotId, NewDecision request, JudgingMaterial material, CancellationToken cancellationToken)
     {
-        var gated = await LotGate.CloseAsync(act.Db, lotId, cancellationToken) ?? throw new RefusedException(new NothingThere("lot"));
+        var gated = await LotGate.CloseAsync(act, lotId, cancellationToken) ?? throw new RefusedException(new NothingThere("lot"));
         if (gated.Standing is not null)
             throw new RefusedException(new LotDecided(gated.Lot.Number));
 
         var setting = await SettingOfLotAsync(act.Db, lotId, cancellationToken);
-        RefuseRole(setting, user);
+        await SignerStanding.RequireAsync(act, SignersOf(setting), cancellationToken);
         _ = DecisionWords.TryParse(request.Decision, out var word);
         var standing = await LotStanding.ReadAsync(act.Db, lotId, cancellationToken);
         if (Against(word, gated.Lot, standing, setting) is [var blocker, ..])
-            throw new RefusedException(new StandsAgainst(blocker));
+            throw new RefusedException(StandsAgainst.Of(blocker));
 
         var evidence = await DecisionEvidence.ReadAsync(act.Db, gated.Lot, standing, cancellationToken);
         var own = evidence.Runs.Count(r => r.ById == act.ById);
@@ -116,9 +116,5 @@ internal static class DecideLot
             .OrderByDescending(s => s.Number)
             .FirstOrDefaultAsync(cancellationToken) ?? throw new RefusedException(new NothingThere("lot"));
 
-    private static void RefuseRole(DeviceSetting setting, ClaimsPrincipal user)
-    {
-        if (setting.SigningNeedsQuality && !CurrentActor.Holds(user, Roles.Quality))
-            throw new RefusedException(new NotAllowed("This device's lots are signed by the role quality only."));
-    }
+    private static string[] SignersOf(DeviceSetting setting) => setting.SigningNeedsQuality ? [Roles.Quality] : [Roles.Engineer, Roles.Quality];
 }
