@@ -1,5 +1,8 @@
 import assert from 'node:assert/strict';
+import { readFileSync, readdirSync } from 'node:fs';
+import { join } from 'node:path';
 import test from 'node:test';
+import { fileURLToPath } from 'node:url';
 import { serialOf } from '../../web/pages/bench-serial.js';
 import { stepsOf, summaryOf } from '../../web/pages/checklist-steps.js';
 import { aboutOf, kindGroups, kindWords, wordsOf } from '../../web/pages/ledger-words.js';
@@ -39,6 +42,14 @@ test('An entry is about names, numbers and the pages of its ids', () => {
 test('Every kind that has words has a group to be filtered by', () => {
   const groups = kindGroups.map(([group]) => group);
   assert.deepEqual(Object.keys(kindWords).map((kind) => kind.split('.')[0]).filter((group) => !groups.includes(group)), []);
+});
+
+test('Every kind of entry that the server writes has words', () => {
+  const source = fileURLToPath(new URL('../../src/', import.meta.url));
+  const written = readdirSync(source, { recursive: true }).filter((file) => file.endsWith('.cs') && !/(^|[\\/])(bin|obj)[\\/]/.test(file))
+    .flatMap((file) => [...readFileSync(join(source, file), 'utf8').matchAll(/(?:\.Record\(|RecordFor\(|const string \w*Kind =)\s*"([a-z]+\.[a-zA-Z]+)"/g)].map(([, kind]) => kind));
+  assert.ok(written.length >= 20, `only ${written.length} kinds were found`);
+  assert.deepEqual(written.filter((kind) => !(kind in kindWords)), []);
 });
 
 const person = (roles, more = {}) => ({ name: roles.join(), roles, disabled: false, mustChangePassword: false, ...more });

@@ -42,7 +42,7 @@ class BenchesPage extends Page {
         <div class=${items.length === 0 ? '' : 'panel'}>
           <rl-data-table cards caption="Benches" caption-unseen .columns=${columns} .rows=${items} .href=${(/** @type {any} */ bench) => `/benches/${bench.id}`}
             ?more=${next !== null} ?busy=${busy} @more=${() => this.benches.more()}
-            .empty=${html`<div class="empty"><h2>There is no bench yet</h2><p>A bench is where units are swept. It is made here, or by the first run that a person sends for it by a new name.</p>${manages ? html`<button type="button" class="main" @click=${this.make}>Make the first bench</button>` : nothing}</div>`}></rl-data-table>
+            .empty=${html`<div class="empty"><h2>There is no bench yet</h2><p>A bench is where units are swept. It is made here, or by the first run that a person sends for it by a new name.</p>${manages ? html`<button type="button" class="main" @click=${() => this.make()}>Make the first bench</button>` : nothing}</div>`}></rl-data-table>
         </div>`}`;
   }
 

@@ -7,6 +7,7 @@ export const kindWords = Object.freeze({
   'bench.columnsRemembered': 'Answer about columns kept',
   'bench.created': 'Bench made',
   'condition.added': 'Condition added',
+  'demo.filled': 'Demo lab filled',
   'device.changed': 'Device changed',
   'device.created': 'Device described',
   'golden.set': 'Golden run set',
@@ -32,7 +33,7 @@ export const kindWords = Object.freeze({
 /** The groups by which the ledger can be filtered: the part of a kind before its point. @type {readonly (readonly [string, string])[]} */
 export const kindGroups = [
   ['', 'everything'], ['lot', 'lots'], ['run', 'runs'], ['unit', 'dispositions'], ['verdicts', 'evaluations'], ['mask', 'masks'], ['golden', 'golden runs'], ['device', 'devices'], ['condition', 'conditions'],
-  ['basis', 'bases of verdicts'], ['bench', 'benches'], ['token', 'tokens'], ['person', 'people'],
+  ['basis', 'bases of verdicts'], ['bench', 'benches'], ['token', 'tokens'], ['person', 'people'], ['demo', 'the demo lab'],
 ];
 
 /** Ids of a subject that have a page of their own. @type {Readonly<Record<string, string>>} */

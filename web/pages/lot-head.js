@@ -16,7 +16,7 @@ export function headOf(page, lot) {
   return html`
     <div class="page-head">
       <div class="lot-name">
-        <h1>Lot ${lot.number}</h1>
+        <h1 tabindex="-1">Lot ${lot.number}</h1>
         <rl-lot-state state=${lot.state}></rl-lot-state>
         <p class="soft"><a href="/devices/${lot.deviceId}">${lot.partNumber} ${lot.revision}</a>, ${lot.title}. ${several(lot.size, 'unit')}, opened ${opened}${opened === 'just now' ? '' : ' ago'}${lot.lastRunAt === null ? nothing : html`, last run ${when(lot.lastRunAt, age(lot.lastRunAt, Date.now()) === 'just now' ? '' : ' ago')}`}.</p>
       </div>

@@ -57,7 +57,7 @@ class TokensPage extends Page {
       ${items === null ? (busy ? html`<rl-busy label="Reading the tokens"></rl-busy>` : nothing) : html`
         <div class=${items.length === 0 ? '' : 'panel'}>
           <rl-data-table cards caption="Tokens" caption-unseen .columns=${this.columns} .rows=${items} ?more=${next !== null} ?busy=${busy} @more=${() => this.tokens.more()}
-            .empty=${html`<div class="empty"><h2>There is no token</h2><p>People send files from the browser without one. A bench that sends by itself, with a script or the bench's client, needs one.</p><button type="button" class="main" @click=${this.make}>Make a token</button></div>`}></rl-data-table>
+            .empty=${html`<div class="empty"><h2>There is no token</h2><p>People send files from the browser without one. A bench that sends by itself, with a script or the bench's client, needs one.</p><button type="button" class="main" @click=${() => this.make()}>Make a token</button></div>`}></rl-data-table>
         </div>`}`;
   }
 

@@ -4,13 +4,20 @@
 //     .href=${(bench) => `/benches/${bench.id}`} ?more=${next !== null} @more=${this.loadMore} .empty=${html`…`}></rl-data-table>
 //
 // A row with an address is followed by its link, which is the row's head cell, or by a click anywhere on the row that hits
+<<<<<<< HEAD
 // no other control; instead of .href, .pickable gives the head cell a button and tells "pick" with the row, and "row-hover"
 // with its key while the pointer is over it. "cards" turns rows into cards on a narrow screen. point(key) marks a row and
 // brings it into view, without drawing the table anew.
+=======
+// no other control; instead of .href, .pickable gives the head cell a button and tells "pick" with the row. "cards" turns
+// rows into cards on a narrow screen. What the page's templates in .empty and in cells listen to is called with the table
+// as "this": give arrow functions there.
+>>>>>>> refs/heads/web
 
 import { repeat } from 'lit/directives/repeat.js';
 import { Element, html, nothing } from './element.js';
 import { several } from '../numbers.js';
+import { sorted } from './sorting.js';
 
 /**
  * @template T
@@ -73,7 +80,11 @@ export class DataTable extends Element {
         <table role="table">
           <caption class=${this.captionUnseen ? 'unseen' : ''}>${this.caption}</caption>
           <thead role="rowgroup"><tr role="row">${this.columns.map((column) => this.headCell(column))}</tr></thead>
+<<<<<<< HEAD
           <tbody role="rowgroup" @pointerover=${this.pickable ? this.onPointer : nothing} @pointerleave=${this.pickable ? this.onPointer : nothing}>${repeat(sorted(this.rows, this.columns, this.sort, this.descending), this.keyOf, (row) => this.row(row))}</tbody>
+=======
+          <tbody role="rowgroup">${repeat(sorted(this.rows, this.columns.find((column) => column.key === this.sort)?.sort, this.descending), this.keyOf, (row) => this.row(row))}</tbody>
+>>>>>>> refs/heads/web
         </table>
       </div>
       ${this.more ? html`
@@ -153,33 +164,6 @@ export class DataTable extends Element {
     const way = /** @type {HTMLElement | null | undefined} */ (/** @type {Element} */ (event.currentTarget).querySelector('th a, th button'));
     way?.dispatchEvent(new MouseEvent('click', { bubbles: true, cancelable: true, ctrlKey: event.ctrlKey, metaKey: event.metaKey, shiftKey: event.shiftKey }));
   }
-}
-
-/**
- * @param {readonly any[]} rows
- * @param {readonly Column<any>[]} columns
- * @param {string} key
- * @param {boolean} descending
- */
-export function sorted(rows, columns, key, descending) {
-  const by = columns.find((column) => column.key === key)?.sort;
-  if (by === undefined)
-    return rows;
-  const collator = new Intl.Collator('en', { numeric: true });
-  const direction = descending ? -1 : 1;
-  return rows
-    .map((row, at) => ({ row, at, value: by(row) }))
-    .sort((a, b) => compare(a.value, b.value, direction, collator) || a.at - b.at)
-    .map(({ row }) => row);
-}
-
-/** @param {number | string | null | undefined} a @param {number | string | null | undefined} b @param {number} direction @param {Intl.Collator} collator */
-function compare(a, b, direction, collator) {
-  const aAbsent = a === null || a === undefined;
-  const bAbsent = b === null || b === undefined;
-  if (aAbsent || bAbsent)
-    return Number(aAbsent) - Number(bAbsent);
-  return direction * (typeof a === 'number' && typeof b === 'number' ? a - b : collator.compare(String(a), String(b)));
 }
 
 customElements.define('rl-data-table', DataTable);

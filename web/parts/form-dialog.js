@@ -113,7 +113,7 @@ async function submit(event, dialog, state, send) {
   const shown = Object.keys(answer.errors).filter((field) => form.elements.namedItem(field) !== null);
   state.refusal = shown.length > 0 && shown.length === Object.keys(answer.errors).length ? null : answer;
   dialog.update();
-  const first = shown.map((field) => form.elements.namedItem(field)).find((field) => field instanceof HTMLElement);
+  const first = [...form.elements].find((input) => shown.includes(/** @type {HTMLInputElement} */ (input).name));
   if (first instanceof HTMLElement)
     setTimeout(() => first.focus());
 }
