@@ -4,15 +4,10 @@
 //     .href=${(bench) => `/benches/${bench.id}`} ?more=${next !== null} @more=${this.loadMore} .empty=${html`…`}></rl-data-table>
 //
 // A row with an address is followed by its link, which is the row's head cell, or by a click anywhere on the row that hits
-<<<<<<< HEAD
 // no other control; instead of .href, .pickable gives the head cell a button and tells "pick" with the row, and "row-hover"
 // with its key while the pointer is over it. "cards" turns rows into cards on a narrow screen. point(key) marks a row and
-// brings it into view, without drawing the table anew.
-=======
-// no other control; instead of .href, .pickable gives the head cell a button and tells "pick" with the row. "cards" turns
-// rows into cards on a narrow screen. What the page's templates in .empty and in cells listen to is called with the table
-// as "this": give arrow functions there.
->>>>>>> refs/heads/web
+// brings it into view, without drawing the table anew. What the page's templates in .empty and in cells listen to is called
+// with the table as "this": give arrow functions there.
 
 import { repeat } from 'lit/directives/repeat.js';
 import { Element, html, nothing } from './element.js';
@@ -80,11 +75,10 @@ export class DataTable extends Element {
         <table role="table">
           <caption class=${this.captionUnseen ? 'unseen' : ''}>${this.caption}</caption>
           <thead role="rowgroup"><tr role="row">${this.columns.map((column) => this.headCell(column))}</tr></thead>
-<<<<<<< HEAD
-          <tbody role="rowgroup" @pointerover=${this.pickable ? this.onPointer : nothing} @pointerleave=${this.pickable ? this.onPointer : nothing}>${repeat(sorted(this.rows, this.columns, this.sort, this.descending), this.keyOf, (row) => this.row(row))}</tbody>
-=======
-          <tbody role="rowgroup">${repeat(sorted(this.rows, this.columns.find((column) => column.key === this.sort)?.sort, this.descending), this.keyOf, (row) => this.row(row))}</tbody>
->>>>>>> refs/heads/web
+// no other control; instead of .href, .pickable gives the head cell a button and tells "pick" with the row, and "row-hover"
+// with its key while the pointer is over it. "cards" turns rows into cards on a narrow screen. point(key) marks a row and
+// brings it into view, without drawing the table anew. What the page's templates in .empty and in cells listen to is called
+// with the table as "this": give arrow functions there.
         </table>
       </div>
       ${this.more ? html`
