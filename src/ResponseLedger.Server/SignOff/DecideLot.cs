@@ -37,7 +37,7 @@ internal static class DecideLot
     }
 
     private static async Task<Decision> DecideAsync(
-        Act act, Guid lotId, NewDecision request, JudgingMaterial material, CancellationToken cancellationToken)
+        Act act, Guid lotId, NewDecision request, ClaimsPrincipal user, JudgingMaterial material, CancellationToken cancellationToken)
     {
         var gated = await LotGate.CloseAsync(act, lotId, cancellationToken) ?? throw new RefusedException(new NothingThere("lot"));
         if (gated.Standing is not null)
