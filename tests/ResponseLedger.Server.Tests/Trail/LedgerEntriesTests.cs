@@ -51,14 +51,14 @@ public sealed class LedgerEntriesTests(Lab lab)
     }
 
     [Theory]
-    [InlineData("limit=0", HttpStatusCode.UnprocessableEntity)]
-    [InlineData("limit=501", HttpStatusCode.UnprocessableEntity)]
-    [InlineData("after=somewhere", HttpStatusCode.BadRequest)]
-    public async Task A_page_that_cannot_be_is_refused(string query, HttpStatusCode expected)
+    [InlineData("limit=0")]
+    [InlineData("limit=501")]
+    [InlineData("after=somewhere")]
+    public async Task A_page_that_cannot_be_is_refused(string query)
     {
         var auditor = await lab.SignInAsync("auditor");
 
-        await (await auditor.GetAsync($"/api/ledger/entries?{query}")).ShouldRefuseAsync(expected);
+        await (await auditor.GetAsync($"/api/ledger/entries?{query}")).ShouldRefuseAsync(HttpStatusCode.UnprocessableEntity);
     }
 
     [Fact]
