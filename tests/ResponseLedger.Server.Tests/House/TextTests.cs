@@ -61,6 +61,31 @@ public sealed class TextTests(Lab lab)
         Assert.True(findings.Count == 0, string.Join(Environment.NewLine, findings));
     }
 
+    [Theory]
+    [InlineData("device", "a\0b")]
+    [InlineData("lot", "a\0b")]
+    [InlineData("bench", "a\0b")]
+    [InlineData("bench", "a\u202Eb")]
+    [InlineData("serial", "a\0b")]
+    [InlineData("serial", "a\u2066b")]
+    [InlineData("condition", "a\0b")]
+    [InlineData("purpose", "a\0b")]
+    [InlineData("measuredAt", "2026-03-01T09:30:00Z\0")]
+    [InlineData("acknowledge", "a\0b")]
+    [InlineData("columns", "[{\"column\":1,\"quantity\":\"frequency\",\"unit\":\"\\u0000\"}]")]
+    [InlineData("columns", "{\"parameter\":\"\\u0000\"}")]
+    [InlineData("circumstances", "{\"instruments\":[\"\\u0000\"]}")]
+    [InlineData("circumstances", "{\"\\u0000\":1}")]
+    public async Task No_field_of_an_upload_takes_a_text_that_cannot_be_kept(string field, string value)
+    {
+        var scene = await RunScene.NewAsync(lab, mask: false);
+        var fields = new Dictionary<string, string> { ["device"] = scene.PartNumber, ["lot"] = scene.LotNumber, ["bench"] = scene.Bench, [field] = value };
+
+        using var response = await RunScene.SendAsync(scene.Engineer, fields.Select(f => (f.Key, f.Value)), [("S1.csv", RunScene.Csv(0))]);
+
+        await response.ShouldRefuseAsync(HttpStatusCode.UnprocessableEntity);
+    }
+
     [Fact]
     public async Task A_reason_may_have_lines_and_a_mask_with_ordinary_names_is_taken()
     {

@@ -131,9 +131,17 @@ public sealed class DispositionTests(Lab lab)
             var answer = await scene.DecideAsync("approve");
 
             if (blockers.Length == 0)
+            {
                 await answer.ShouldBeAsync(HttpStatusCode.Created);
-            else
-                await answer.ShouldRefuseAsync(HttpStatusCode.Conflict, blockers[0]);
+                continue;
+            }
+
+            // A finer word than the code is told as the reason.
+            var problem = await answer.ShouldRefuseAsync(HttpStatusCode.Conflict);
+            var code = problem.GetProperty("code").GetString();
+            Assert.Equal(blockers[0], problem.TryGetProperty("reason", out var reason) ? reason.GetString() : code);
+            if (blockers[0] is "noReleasedMask" or "concessionNeeded")
+                Assert.Equal("unitsNotPassed", code);
         }
     }
 }
