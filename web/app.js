@@ -23,20 +23,13 @@ let arrivals = 0;
 
 async function begin() {
   for (;;) {
-    const about = await ask('/api/about');
+    const [about, answer] = await Promise.all([ask('/api/about'), session.refresh()]);
     if (about.ok)
       tellAbout(about.body);
-    if (about.ok && about.body.ready)
+    if (answer.ok || answer.status === 401)
       break;
-    wait(about.ok ? 'The server is starting. This page goes on by itself.' : about.sentence);
+    wait(about.ok && !about.body.ready ? 'The server is starting. This page goes on by itself.' : answer.sentence);
     await new Promise((resolve) => setTimeout(resolve, retryMs));
-  }
-
-  let answer = await session.refresh();
-  while (!answer.ok && answer.status !== 401) {
-    wait(answer.sentence);
-    await new Promise((resolve) => setTimeout(resolve, retryMs));
-    answer = await session.refresh();
   }
 
   onSignedOut(signInAgain);

@@ -9,27 +9,29 @@
 // basis         asMeasured, minusGolden or levelled; levelHz: where. Give overlays as measured; others are shown as they are
 // view          what is in view, as plot-view.js prints and parses it
 // cursorHz      where the frequency cursor stands
+// handles       places that can be dragged, as [{ panel: 'upper', frequencyHz, value }]: corners of a limit that is edited
+// tools         further controls, at the beginning of the row of them
 //
 // Events: cursor { frequencyHz, golden, runs, read(runIds) } with values and margins there; run-hover { runId } or null;
-// run-pick { runId }; view { view, text } once it rests; basis { basis, levelHz }.
+// run-pick { runId }; view { view, text } once it rests; basis { basis, levelHz }; handle-move { index, frequencyHz, value, done }.
 
 import { frequency, parseNumber } from '../numbers.js';
 import { Element, html, nothing, ownStyles, uniqueId } from '../parts/element.js';
 import { inside, sliderFrequency, stepped } from './cursor-steps.js';
-import { attachGestures, panelAt } from './plot-gestures.js';
+import { attachGestures, handleUnder, panelAt } from './plot-gestures.js';
 import { intentOf } from './plot-keys.js';
 import { describe, plotModel } from './plot-model.js';
 import { PlotPicture } from './plot-picture.js';
 import { cursorOf, toolsOf } from './plot-controls.js';
-import { legendOf, tableOf } from './plot-readout.js';
-import { isWhole, printView, wholeView } from './plot-view.js';
+import { legendOf, moreOf } from './plot-readout.js';
+import { changedView, frequencyIn, isWhole, printView, wholeView } from './plot-view.js';
 import { cursorSentence, quantityWord } from './plot-words.js';
 import { outcomeWord } from './named-runs.js';
 import { nearestRun, neighbourRun } from './nearest-run.js';
 import { sharedPainter } from './run-painter.js';
 import { valueAt } from './curve.js';
 import { goldenReadings, runReadings, spreadAt } from './readings.js';
-import { logAxis, moved, placeOf, sameSpan, straightAxis, within, zoomed } from './spans.js';
+import { logAxis, moved, placeOf, straightAxis, zoomed } from './spans.js';
 import { spanOf } from './value-span.js';
 
 /** @typedef {import('./spans.js').Span} Span */
@@ -41,13 +43,12 @@ sharedPainter();
 await ownStyles(import.meta.url);
 
 const reachPx = 9;
-const leastShare = 1e-3;
 const calmMs = 150;
 
 export class ResponsePlot extends Element {
   static properties = {
     upper: { attribute: false }, lower: { attribute: false }, chosen: { attribute: false }, highlight: { attribute: false },
-    basis: {}, levelHz: { attribute: false }, view: { attribute: false }, cursorHz: { attribute: false }, caption: {},
+    basis: {}, levelHz: { attribute: false }, view: { attribute: false }, cursorHz: { attribute: false }, handles: { attribute: false }, caption: {}, tools: { attribute: false },
     switchedOff: { state: true }, hovered: { state: true }, problems: { state: true }, said: { state: true }, hasPercentiles: { state: true }, open: { state: true },
   };
 
@@ -81,7 +82,11 @@ export class ResponsePlot extends Element {
     this.view = wholeView;
     /** @type {number | null} */
     this.cursorHz = null;
+    /** @type {import('./cursor-layer.js').Handle[]} */
+    this.handles = [];
     this.caption = '';
+    /** @type {unknown} */
+    this.tools = nothing;
     /** @type {ReadonlySet<string>} what the legend has switched off */
     this.switchedOff = new Set();
     /** @type {string | null} */
@@ -117,8 +122,7 @@ export class ResponsePlot extends Element {
 
   /** What is in view of the frequencies. @returns {Span} */
   get #frequency() {
-    const whole = this.#model?.frequency ?? { min: 1, max: 10 };
-    return this.view.frequency === null ? whole : within(logAxis, this.view.frequency, whole, leastShare);
+    return frequencyIn(this.view, this.#model?.frequency ?? { min: 1, max: 10 });
   }
 
   disconnectedCallback() {
@@ -158,14 +162,7 @@ export class ResponsePlot extends Element {
         ${cursorOf(this, { id: this.#id, span: this.#frequency, atHz: this.#atHz, sentence })}
         ${legendOf(this, model, this.#atHz)}
         ${model.notes.map((note) => html`<p class="plot-note">${note}</p>`)}
-        <details class="plot-values" @toggle=${(/** @type {Event} */ event) => { this.open = /** @type {HTMLDetailsElement} */ (event.target).open; }}>
-          <summary>All values at ${frequency(this.#atHz)}</summary>
-          ${this.open ? tableOf(model, this.#atHz, this.raisedRunId) : nothing}
-        </details>
-        <details class="plot-help">
-          <summary>Keys and pointer</summary>
-          <p id="${this.#id}-keys">With the plot in focus: left and right move the cursor, up and down walk through the runs, Enter picks one. Plus and minus zoom, Shift with an arrow moves the view, 0 shows the whole sweep. With a pointer: drag a box to zoom, Shift and drag to move, turn the wheel to zoom once the plot has the focus, double-click for the whole sweep. Two fingers zoom and move.</p>
-        </details>
+        ${moreOf(this, model, { id: this.#id, atHz: this.#atHz, open: this.open })}
         <p class="unseen" role="status">${this.said}</p>
       </figure>`;
   }
@@ -177,7 +174,7 @@ export class ResponsePlot extends Element {
     this.#picture?.show({
       model, basisHz: this.levelFrequencyHz, frequency: this.#frequency, hidden: this.switchedOff,
       values: Object.fromEntries(model.panels.map((panel) => [panel.key, this.#valuesOf(panel)])),
-      atHz: this.#atHz, cursorText: frequency(this.#atHz), raised: this.raisedRunId,
+      atHz: this.#atHz, cursorText: frequency(this.#atHz), raised: this.raisedRunId, handles: this.handles,
     });
   }
 
@@ -213,23 +210,9 @@ export class ResponsePlot extends Element {
   }
 
   /** @param {import('./plot-gestures.js').ViewChange} change */
-  changeView({ frequency: span, values = [] }) {
-    const model = this.#model;
-    if (model === null) return;
-    const view = { ...this.view };
-    if (span) {
-      const kept = within(logAxis, span, model.frequency, leastShare);
-      view.frequency = sameSpan(kept, model.frequency) ? null : kept;
-    }
-
-    for (const { key, span: wanted } of values) {
-      const panel = model.panels.find((one) => one.key === key);
-      if (panel === undefined) continue;
-      const kept = within(straightAxis, wanted, zoomed(straightAxis, panel.span, 3), leastShare);
-      view[key] = sameSpan(kept, panel.span) ? null : kept;
-    }
-
-    this.view = view;
+  changeView(change) {
+    if (this.#model === null) return;
+    this.view = changedView(this.view, this.#model, change);
     this.#tellView();
   }
 
@@ -363,7 +346,7 @@ export class ResponsePlot extends Element {
 
   #tellView() {
     clearTimeout(this.#calm);
-    this.#calm = window.setTimeout(() => this.tell('view', { view: this.view, text: printView(this.view) }), calmMs);
+    this.#calm = setTimeout(() => this.tell('view', { view: this.view, text: printView(this.view) }), calmMs);
   }
 
   #makePicture() {
@@ -381,10 +364,18 @@ export class ResponsePlot extends Element {
         this.#follow();
         this.#pickRaised();
       },
+      grab: (place) => handleUnder(this.#picture?.panels ?? [], this.handles, place),
+      dragHandle: (index, place, done) => this.#dragHandle(index, place, done),
       drawBox: (box) => this.#picture?.drawBox(box),
       change: (change) => this.changeView(change),
       whole: () => this.showWhole(),
     });
+  }
+
+  /** @param {number} index @param {Place} place @param {boolean} done */
+  #dragHandle(index, place, done) {
+    const panel = this.#picture?.panels.find(({ key }) => key === this.handles[index]?.panel);
+    if (panel) this.tell('handle-move', { index, frequencyHz: panel.frequencyAt(place.x), value: panel.valueAt(place.y), done });
   }
 
   #dropPicture() {

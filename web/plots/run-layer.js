@@ -89,7 +89,7 @@ export class RunLayer {
     if (key === this.#shown?.key) return;
     clearTimeout(this.#timer);
     if (this.#shown === null) this.#draw();
-    else this.#timer = window.setTimeout(() => this.#draw(), calmMs);
+    else this.#timer = setTimeout(() => this.#draw(), calmMs);
   }
 
   async #draw() {

@@ -34,13 +34,20 @@ public sealed class ActRunner(IDbContextFactory<ResponseLedgerContext> contexts,
                 {
                     db.HoldsTransaction = true;
                     backend = connection.ProcessID;
+
+                    // An act is done whole or not at all, so nothing ever goes back to a savepoint: each would cost two round trips.
+                    db.Database.AutoSavepointsEnabled = false;
                     var attempt = new Act(db, actor, Microseconds.Cut(time.GetUtcNow()), time);
                     var value = await body(attempt, token);
                     if (attempt.Entries.Count == 0)
                         throw new InvalidOperationException("An act records at least one ledger entry.");
 
-                    db.LedgerEntries.AddRange(attempt.Entries);
-                    db.LedgerQueue.AddRange(attempt.Entries.Select(e => new LedgerQueueRow { EntryId = e.Id }));
+                    foreach (var entry in attempt.Entries.Skip(attempt.EntriesWritten))
+                    {
+                        db.LedgerEntries.Add(entry);
+                        db.LedgerQueue.Add(new LedgerQueueRow { EntryId = entry.Id });
+                    }
+
                     await db.SaveChangesAsync(token);
                     committing = attempt.Entries[0].Id;
                     outcome = value;

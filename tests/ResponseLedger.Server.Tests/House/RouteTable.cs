@@ -68,6 +68,7 @@ internal static class RouteTable
         ["GET /api/lots/{id}/overlay"] = "read",
         ["POST /api/lots/{id}/units/{unitId}/disposition"] = "sign",
         ["POST /api/lots/{id}/decisions"] = "sign",
+        ["GET /api/lots/{id}/signing"] = "sign",
         ["GET /api/lots/{id}/decisions"] = "read",
         ["GET /api/decisions/{id}"] = "read",
         ["GET /api/decisions/{id}/record"] = "read",

@@ -11,7 +11,7 @@ namespace ResponseLedger.Server.Tests.MainJob;
 /// <summary>The real server as a process of its own, on an embedded store in a data folder of a test's own, without the demo lab; it can be killed and started again.</summary>
 internal sealed class ServerProcess : IAsyncDisposable
 {
-    private static readonly TimeSpan Longest = TimeSpan.FromSeconds(60);
+    private static readonly TimeSpan Longest = TimeSpan.FromMinutes(3);
 
     private readonly string dataFolder = Directory.CreateTempSubdirectory("responseledger-kill-").FullName;
     private readonly ConcurrentQueue<string> said = new();
@@ -69,7 +69,7 @@ internal sealed class ServerProcess : IAsyncDisposable
         {
             Assert.True(IsAlive, $"The server ended:\n{Said}");
             Assert.True(TimeProvider.System.GetElapsedTime(since) < Longest, $"Not ready after {Longest}:\n{Said}");
-            await Task.Delay(25);
+            await Task.Delay(100);
         }
     }
 
