@@ -129,7 +129,7 @@ class RunPage extends Page {
     return html`
       <div class="page-head">
         <div>
-          <h1>${run.serial} <rl-outcome outcome=${this.verdict.outcome}></rl-outcome> ${badge(standings[run.standing] ?? { sign: '?', words: run.standing, tone: '' })}${run.reassigned > 0 ? badge({ sign: '\u2192', words: 'reassigned', tone: 'aside' }) : nothing}</h1>
+          <h1>${run.serial} <rl-outcome outcome=${this.verdict.outcome}></rl-outcome> ${badge(standings[run.standing] ?? { sign: '?', words: run.standing, tone: '' })} ${run.reassigned > 0 ? badge({ sign: '\u2192', words: 'reassigned', tone: 'aside' }) : nothing}</h1>
           <p class="soft"><a href="/devices/${run.deviceId}">${run.partNumber} ${run.revision}</a>, ${run.lotId === null ? 'no lot' : html`lot <a href="/lots/${run.lotId}">${run.lotNumber}</a>`}, condition ${run.condition}</p>
         </div>
         <div class="row">

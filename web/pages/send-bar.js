@@ -76,5 +76,5 @@ export function questionsOf(rows, answer) {
       <div class="question" role="status"><p>${several(same.length, 'file holds', 'files hold')} bytes that stand in the lot for another unit. Nothing was stored of ${same.length === 1 ? 'it' : 'them'}.</p><button type="button" @click=${() => answer.sameBytes(same)}>Look at ${same.length === 1 ? 'it' : 'them'}</button></div>`}
     ${decided.length === 0 ? nothing : html`
       <div class="question bad" role="alert"><p>${decided[0].result?.issues.find(({ code }) => code === 'lotDecided')?.message ?? ''} ${several(decided.length, 'file was', 'files were')} not taken. Choose another lot above and send ${decided.length === 1 ? 'it' : 'them'} again, or ask quality to reopen the lot.</p>
-        <button type="button" @click=${() => answer.again(decided)}>Send ${decided.length === 1 ? 'it' : 'them'} again</button></div>`}`;
+        <div class="row"><a class="button" href="/lots/${decided[0].at?.lotId}">See the lot</a><button type="button" @click=${() => answer.again(decided)}>Send ${decided.length === 1 ? 'it' : 'them'} again</button></div></div>`}`;
 }

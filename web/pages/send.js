@@ -130,9 +130,10 @@ class SendPage extends Page {
     }
 
     const { lotId } = batch.place;
-    if (!anew && deviceId === batch.place.deviceId && lotId !== '' && !answer.items.some(({ id }) => id === lotId)) {
+    if (deviceId === batch.place.deviceId && lotId !== '' && !answer.items.some(({ id }) => id === lotId)) {
       batch.placeAt({ lotId: '' });
-      say('The lot that the address names is not open: it takes no runs. Choose another one, or have it reopened.', { bad: true });
+      if (!anew)
+        say('The lot that the address names is not open: it takes no runs. Choose another one, or have it reopened.', { bad: true });
     }
   }
 

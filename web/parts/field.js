@@ -65,6 +65,13 @@ export class Field extends Element {
     this.input?.focus();
   }
 
+  updated() {
+    // Once somebody has chosen, the marks on the options move nothing any more.
+    const { input } = this;
+    if (input instanceof HTMLSelectElement && input.value !== this.value && this.options?.some(([value]) => value === this.value))
+      input.value = this.value;
+  }
+
   render() {
     const problems = this.errors ?? [];
     const check = this.type === 'checkbox' || this.type === 'radio';
