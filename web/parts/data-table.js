@@ -75,10 +75,9 @@ export class DataTable extends Element {
         <table role="table">
           <caption class=${this.captionUnseen ? 'unseen' : ''}>${this.caption}</caption>
           <thead role="rowgroup"><tr role="row">${this.columns.map((column) => this.headCell(column))}</tr></thead>
-// no other control; instead of .href, .pickable gives the head cell a button and tells "pick" with the row, and "row-hover"
-// with its key while the pointer is over it. "cards" turns rows into cards on a narrow screen. point(key) marks a row and
-// brings it into view, without drawing the table anew. What the page's templates in .empty and in cells listen to is called
-// with the table as "this": give arrow functions there.
+          <tbody role="rowgroup" @pointerover=${this.pickable ? this.onPointer : nothing} @pointerleave=${this.pickable ? this.onPointer : nothing}>
+            ${repeat(sorted(this.rows, this.columns.find((column) => column.key === this.sort)?.sort, this.descending), this.keyOf, (row) => this.row(row))}
+          </tbody>
         </table>
       </div>
       ${this.more ? html`
