@@ -3,6 +3,7 @@
 import { ask, onSignedOut } from './api.js';
 import { render } from 'lit';
 import { html } from './parts/element.js';
+import { acceptDrops } from './parts/file-drop.js';
 import { signInAgain } from './parts/sign-in-again.js';
 import { say } from './parts/notice.js';
 import { go, matchRoute, start } from './router.js';
@@ -22,24 +23,18 @@ let arrivals = 0;
 
 async function begin() {
   for (;;) {
-    const about = await ask('/api/about');
+    const [about, answer] = await Promise.all([ask('/api/about'), session.refresh()]);
     if (about.ok)
       tellAbout(about.body);
-    if (about.ok && about.body.ready)
+    if (answer.ok || answer.status === 401)
       break;
-    wait(about.ok ? 'The server is starting. This page goes on by itself.' : about.sentence);
+    wait(about.ok && !about.body.ready ? 'The server is starting. This page goes on by itself.' : answer.sentence);
     await new Promise((resolve) => setTimeout(resolve, retryMs));
-  }
-
-  let answer = await session.refresh();
-  while (!answer.ok && answer.status !== 401) {
-    wait(answer.sentence);
-    await new Promise((resolve) => setTimeout(resolve, retryMs));
-    answer = await session.refresh();
   }
 
   onSignedOut(signInAgain);
   session.addEventListener('change', () => void arrive(true));
+  acceptDrops();
   nav.addEventListener('sign-out', () => void signOut());
   main.replaceChildren();
   start(() => void arrive(false));

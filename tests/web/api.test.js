@@ -100,3 +100,67 @@ test('A query leaves out what is not given', () => {
   assert.equal(api.withQuery('/api/lots?limit=5', { state: '', device: null, search: 'a b', cursor: undefined }), '/api/lots?limit=5&search=a+b');
   assert.equal(api.withQuery('/api/lots', {}), '/api/lots');
 });
+
+class UploadStub extends EventTarget {
+  static last;
+  upload = new EventTarget();
+  headers = {};
+  status = 0;
+  responseText = '';
+  aborted = false;
+
+  constructor() {
+    super();
+    UploadStub.last = this;
+  }
+
+  open(method, at) {
+    Object.assign(this, { method, at });
+  }
+
+  setRequestHeader(name, value) {
+    this.headers[name] = value;
+  }
+
+  send(form) {
+    this.form = form;
+  }
+
+  abort() {
+    this.aborted = true;
+    this.dispatchEvent(new Event('abort'));
+  }
+
+  answer(status, body) {
+    Object.assign(this, { status, responseText: JSON.stringify(body) });
+    this.dispatchEvent(new Event('load'));
+  }
+}
+
+test('A form tells how far it is, and its answer is understood like any other', async () => {
+  globalThis.XMLHttpRequest = UploadStub;
+  const parts = [];
+  const form = new FormData();
+  const sending = api.sendForm('/api/runs', form, { onProgress: (part) => parts.push(part) });
+  const request = UploadStub.last;
+  assert.deepEqual([request.method, request.at, request.headers['X-ResponseLedger'], request.form], ['POST', '/api/runs', '1', form]);
+  for (const [loaded, lengthComputable] of [[25, true], [50, false], [100, true]])
+    request.upload.dispatchEvent(Object.assign(new Event('progress'), { loaded, total: 100, lengthComputable }));
+  request.answer(422, { code: 'nothingTaken', detail: 'No file was taken.', results: [{ outcome: 'refused' }] });
+  const answer = await sending;
+  assert.deepEqual([parts, answer.ok, answer.code, answer.body.results.length], [[0.25, 1], false, 'nothingTaken', 1]);
+});
+
+test('A form that is stopped or meets no server is a refusal', async () => {
+  globalThis.XMLHttpRequest = UploadStub;
+  const stop = new AbortController();
+  const stopped = api.sendForm('/api/runs', new FormData(), { signal: stop.signal });
+  stop.abort();
+  assert.equal((await stopped).code, 'stopped');
+  assert.ok(UploadStub.last.aborted);
+  assert.equal((await api.sendForm('/api/runs', new FormData(), { signal: stop.signal })).code, 'stopped');
+  assert.equal(UploadStub.last.form, undefined);
+  const broken = api.sendForm('/api/runs', new FormData());
+  UploadStub.last.dispatchEvent(new Event('error'));
+  assert.equal((await broken).code, 'unreachable');
+});

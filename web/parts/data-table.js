@@ -4,12 +4,15 @@
 //     .href=${(bench) => `/benches/${bench.id}`} ?more=${next !== null} @more=${this.loadMore} .empty=${html`…`}></rl-data-table>
 //
 // A row with an address is followed by its link, which is the row's head cell, or by a click anywhere on the row that hits
-// no other control; instead of .href, .pickable gives the head cell a button and tells "pick" with the row. "cards" turns
-// rows into cards on a narrow screen.
+// no other control; instead of .href, .pickable gives the head cell a button and tells "pick" with the row, and "row-hover"
+// with its key while the pointer is over it. "cards" turns rows into cards on a narrow screen. point(key) marks a row and
+// brings it into view, without drawing the table anew. What the page's templates in .empty and in cells listen to is called
+// with the table as "this": give arrow functions there.
 
 import { repeat } from 'lit/directives/repeat.js';
 import { Element, html, nothing } from './element.js';
 import { several } from '../numbers.js';
+import { sorted } from './sorting.js';
 
 /**
  * @template T
@@ -60,6 +63,8 @@ export class DataTable extends Element {
     this.busy = false;
     this.sort = '';
     this.descending = false;
+    /** @type {string | null} */
+    this.hoveredKey = null;
   }
 
   render() {
@@ -70,7 +75,7 @@ export class DataTable extends Element {
         <table role="table">
           <caption class=${this.captionUnseen ? 'unseen' : ''}>${this.caption}</caption>
           <thead role="rowgroup"><tr role="row">${this.columns.map((column) => this.headCell(column))}</tr></thead>
-          <tbody role="rowgroup">${repeat(sorted(this.rows, this.columns, this.sort, this.descending), this.keyOf, (row) => this.row(row))}</tbody>
+          <tbody role="rowgroup" @pointerover=${this.pickable ? this.onPointer : nothing} @pointerleave=${this.pickable ? this.onPointer : nothing}>${repeat(sorted(this.rows, this.columns.find((column) => column.key === this.sort)?.sort, this.descending), this.keyOf, (row) => this.row(row))}</tbody>
         </table>
       </div>
       ${this.more ? html`
@@ -97,7 +102,7 @@ export class DataTable extends Element {
     const leads = this.href?.(row) ?? null;
     const marked = this.chosen !== null && this.keyOf(row) === this.chosen;
     return html`
-      <tr role="row" class="${leads !== null || this.pickable ? 'leads' : ''} ${marked ? 'chosen' : ''}" @click=${(/** @type {MouseEvent} */ event) => this.follow(event)}>
+      <tr role="row" data-key=${String(this.keyOf(row))} class="${leads !== null || this.pickable ? 'leads' : ''} ${marked ? 'chosen' : ''}" @click=${(/** @type {MouseEvent} */ event) => this.follow(event)}>
         ${this.columns.map((column) => {
           const shown = column.cell(row);
           if (column.head) {
@@ -109,6 +114,30 @@ export class DataTable extends Element {
           return html`<td role="cell" class="${column.number ? 'number' : ''} ${isEmpty ? 'empty-cell' : ''}"><span class="cell-name" aria-hidden="true">${column.label}</span><span>${shown}</span></td>`;
         })}
       </tr>`;
+  }
+
+  /** @param {unknown} key   null marks none */
+  point(key) {
+    this.querySelector('tr[data-pointed]')?.removeAttribute('data-pointed');
+    const row = key === null ? null : this.querySelector(`tr[data-key="${CSS.escape(String(key))}"]`);
+    row?.setAttribute('data-pointed', '');
+    const scroller = this.querySelector('.scroll');
+    if (!(row instanceof HTMLElement) || scroller === null)
+      return;
+    // Only the table scrolls: the page stays where the person looks.
+    const [own, frame] = [row.getBoundingClientRect(), scroller.getBoundingClientRect()];
+    const headHeight = this.querySelector('thead')?.getBoundingClientRect().height ?? 0;
+    scroller.scrollTop += Math.min(0, own.top - frame.top - headHeight) + Math.max(0, own.bottom - frame.bottom);
+  }
+
+  /** @param {PointerEvent} event */
+  onPointer(event) {
+    const row = event.type === 'pointerleave' ? null : /** @type {HTMLElement | null} */ (/** @type {Element} */ (event.target).closest('tr'));
+    const key = row?.dataset.key ?? null;
+    if (key === this.hoveredKey)
+      return;
+    this.hoveredKey = key;
+    this.tell('row-hover', key);
   }
 
   /** @param {Column<any>} column */
@@ -126,33 +155,6 @@ export class DataTable extends Element {
     const way = /** @type {HTMLElement | null | undefined} */ (/** @type {Element} */ (event.currentTarget).querySelector('th a, th button'));
     way?.dispatchEvent(new MouseEvent('click', { bubbles: true, cancelable: true, ctrlKey: event.ctrlKey, metaKey: event.metaKey, shiftKey: event.shiftKey }));
   }
-}
-
-/**
- * @param {readonly any[]} rows
- * @param {readonly Column<any>[]} columns
- * @param {string} key
- * @param {boolean} descending
- */
-export function sorted(rows, columns, key, descending) {
-  const by = columns.find((column) => column.key === key)?.sort;
-  if (by === undefined)
-    return rows;
-  const collator = new Intl.Collator('en', { numeric: true });
-  const direction = descending ? -1 : 1;
-  return rows
-    .map((row, at) => ({ row, at, value: by(row) }))
-    .sort((a, b) => compare(a.value, b.value, direction, collator) || a.at - b.at)
-    .map(({ row }) => row);
-}
-
-/** @param {number | string | null | undefined} a @param {number | string | null | undefined} b @param {number} direction @param {Intl.Collator} collator */
-function compare(a, b, direction, collator) {
-  const aAbsent = a === null || a === undefined;
-  const bAbsent = b === null || b === undefined;
-  if (aAbsent || bAbsent)
-    return Number(aAbsent) - Number(bAbsent);
-  return direction * (typeof a === 'number' && typeof b === 'number' ? a - b : collator.compare(String(a), String(b)));
 }
 
 customElements.define('rl-data-table', DataTable);

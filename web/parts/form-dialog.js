@@ -13,32 +13,34 @@ import { html, nothing } from './element.js';
 import './field.js';
 
 /** @typedef {import('../api.js').Answer} Answer */
-/** @typedef {{ errors: Record<string, string[]>, refusal: Answer | null, update: () => void }} FormState */
+/** @typedef {{ errors: Record<string, string[]>, refusal: Answer | null, update: () => void, close: () => void }} FormState */
 
 /**
  * @param {object} what
  * @param {string} what.heading
- * @param {string} what.act
+ * @param {string | (() => string)} what.act
  * @param {(state: FormState) => unknown} what.fields
  * @param {(form: FormData) => Promise<Answer> | Answer} what.send   may give a refusal of its own: see refused()
  * @param {boolean} [what.grave]
  * @param {boolean} [what.wide]
  * @param {string} [what.back]
+ * @param {() => boolean} [what.mayAct]   false keeps the act from being sent
  * @returns {Promise<Answer | undefined>}
  */
-export function formDialog({ heading, act, fields, send, grave = false, wide = false, back }) {
+export function formDialog({ heading, act, fields, send, grave = false, wide = false, back, mayAct = () => true }) {
   /** @type {FormState} */
-  const state = { errors: {}, refusal: null, update: () => {} };
+  const state = { errors: {}, refusal: null, update: () => {}, close: () => {} };
   return openDialog({
     heading,
     wide,
     content: (dialog) => {
       state.update = dialog.update;
+      state.close = () => dialog.close();
       return html`
-        <form class="fields" novalidate @submit=${(/** @type {SubmitEvent} */ event) => submit(event, dialog, state, send)}>
+        <form class="fields" novalidate @submit=${(/** @type {SubmitEvent} */ event) => submit(event, dialog, state, mayAct() ? send : null)}>
           ${fields(state)}
           ${state.refusal === null ? nothing : html`<p class="problem" role="alert">${state.refusal.sentence}</p>`}
-          ${ends(html`<button type="submit" class=${grave ? 'grave' : 'main'} ?disabled=${dialog.busy}>${act}</button>`, dialog, back)}
+          ${ends(html`<button type="submit" class=${grave ? 'grave' : 'main'} ?disabled=${dialog.busy || !mayAct()}>${typeof act === 'string' ? act : act()}</button>`, dialog, back)}
         </form>`;
     },
   });
@@ -90,11 +92,11 @@ export function confirmWithReason({ heading, sentence, act, grave = false, withP
  * @param {SubmitEvent} event
  * @param {import('./dialog.js').Opened<Answer>} dialog
  * @param {FormState} state
- * @param {(form: FormData) => Promise<Answer> | Answer} send
+ * @param {((form: FormData) => Promise<Answer> | Answer) | null} send
  */
 async function submit(event, dialog, state, send) {
   event.preventDefault();
-  if (dialog.busy)
+  if (dialog.busy || send === null)
     return;
   const form = /** @type {HTMLFormElement} */ (event.currentTarget);
   dialog.busy = true;
@@ -111,7 +113,7 @@ async function submit(event, dialog, state, send) {
   const shown = Object.keys(answer.errors).filter((field) => form.elements.namedItem(field) !== null);
   state.refusal = shown.length > 0 && shown.length === Object.keys(answer.errors).length ? null : answer;
   dialog.update();
-  const first = shown.map((field) => form.elements.namedItem(field)).find((field) => field instanceof HTMLElement);
+  const first = [...form.elements].find((input) => shown.includes(/** @type {HTMLInputElement} */ (input).name));
   if (first instanceof HTMLElement)
     setTimeout(() => first.focus());
 }

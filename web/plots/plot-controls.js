@@ -13,6 +13,7 @@ const bases = /** @type {const} */ ([['asMeasured', 'As measured'], ['minusGolde
 export function toolsOf(plot, { id, hasGolden, isWhole }) {
   return html`
     <div class="plot-tools">
+      ${plot.tools}
       <fieldset class="plot-bases">
         <legend class="unseen">Curves are shown</legend>
         ${bases.map(([basis, words]) => html`

@@ -10,12 +10,13 @@
 // view          what is in view, as plot-view.js prints and parses it
 // cursorHz      where the frequency cursor stands
 // handles       places that can be dragged, as [{ panel: 'upper', frequencyHz, value }]: corners of a limit that is edited
+// tools         further controls, at the beginning of the row of them
 //
 // Events: cursor { frequencyHz, golden, runs, read(runIds) } with values and margins there; run-hover { runId } or null;
 // run-pick { runId }; view { view, text } once it rests; basis { basis, levelHz }; handle-move { index, frequencyHz, value, done }.
 
 import { frequency, parseNumber } from '../numbers.js';
-import { Element, html, ownStyles, uniqueId } from '../parts/element.js';
+import { Element, html, nothing, ownStyles, uniqueId } from '../parts/element.js';
 import { inside, sliderFrequency, stepped } from './cursor-steps.js';
 import { attachGestures, handleUnder, panelAt } from './plot-gestures.js';
 import { intentOf } from './plot-keys.js';
@@ -47,7 +48,7 @@ const calmMs = 150;
 export class ResponsePlot extends Element {
   static properties = {
     upper: { attribute: false }, lower: { attribute: false }, chosen: { attribute: false }, highlight: { attribute: false },
-    basis: {}, levelHz: { attribute: false }, view: { attribute: false }, cursorHz: { attribute: false }, handles: { attribute: false }, caption: {},
+    basis: {}, levelHz: { attribute: false }, view: { attribute: false }, cursorHz: { attribute: false }, handles: { attribute: false }, caption: {}, tools: { attribute: false },
     switchedOff: { state: true }, hovered: { state: true }, problems: { state: true }, said: { state: true }, hasPercentiles: { state: true }, open: { state: true },
   };
 
@@ -84,6 +85,8 @@ export class ResponsePlot extends Element {
     /** @type {import('./cursor-layer.js').Handle[]} */
     this.handles = [];
     this.caption = '';
+    /** @type {unknown} */
+    this.tools = nothing;
     /** @type {ReadonlySet<string>} what the legend has switched off */
     this.switchedOff = new Set();
     /** @type {string | null} */

@@ -53,9 +53,20 @@ internal static class ApprovalBlockers
     private static string NotPassed(int size, LotTally tally)
     {
         var open = size - tally.Cleared - tally.Conceded;
-        var untested = Math.Max(0, size - tally.Tested);
-        return $"{open} of {size} units neither pass nor are withdrawn: {tally.Failed} fail, {tally.Inconclusive} could not be decided and {untested} are not fully tested. Test them, or give each that does not pass a disposition.";
+        var head = $"{open} of {size} units {(open == 1 ? "neither passes nor is" : "neither pass nor are")} withdrawn";
+
+        // A unit with a disposition is counted by its outcome still, so the parts tell what is open only while there is none.
+        string[] parts = tally.Withdrawn + tally.Conceded > 0 ? [] :
+        [
+            Part(tally.Failed, "fails", "fail"),
+            Part(tally.Inconclusive, "could not be decided", "could not be decided"),
+            Part(Math.Max(0, size - tally.Tested), "is not fully tested", "are not fully tested"),
+        ];
+        var told = string.Join(", ", parts.Where(p => p.Length > 0));
+        return $"{head}{(told.Length > 0 ? $": {told}" : "")}. Test what is not tested, and give each that does not pass a disposition.";
     }
+
+    private static string Part(int count, string one, string many) => count == 0 ? "" : count == 1 ? $"1 {one}" : $"{count} {many}";
 
     private static string Units(int count) => count == 1 ? "One unit is" : $"{count} units are";
 }

@@ -44,7 +44,7 @@ internal static class PeopleRoutes
     {
         public NewPersonValidator()
         {
-            RuleFor(r => r.Email).NotEmpty().WithMessage("Give an e-mail.")
+            RuleFor(r => r.Email).Cascade(CascadeMode.Stop).NotEmpty().WithMessage("Give an e-mail.")
                 .MaximumLength(256).WithMessage("An e-mail has at most 256 characters.")
                 .EmailAddress().WithMessage("This is no e-mail address.");
             RuleFor(r => r.Name).NotEmpty().WithMessage("Give the name as it is to be printed beside a signature.")

@@ -28,12 +28,13 @@ internal static class DecideLot
         ResponseLedgerContext db,
         CancellationToken cancellationToken)
     {
-        var setting = await SettingOfLotAsync(db, id, cancellationToken);
-        RefuseRole(setting, user);
+        var setting = await SigningRules.SettingOfLotAsync(db, id, cancellationToken);
+        if (SigningRules.AgainstRole(setting, user) is { } wrongRole)
+            throw new RefusedException(wrongRole);
         await password.CheckAsync(user, request.Password, cancellationToken);
 
         var decision = await acts.RunAsync(CurrentActor.Of(user), (act, token) => DecideAsync(act, id, request, user, material, token), cancellationToken);
-        return TypedResults.Created($"/api/decisions/{decision.Id}", DecisionView.Of(decision, undone: null, withRecord: true));
+        return TypedResults.Created($"/api/decisions/{decision.Id}", DecisionView.Of(decision, undone: null, undoneBy: null, withRecord: true));
     }
 
     private static async Task<Decision> DecideAsync(
@@ -43,22 +44,23 @@ internal static class DecideLot
         if (gated.Standing is not null)
             throw new RefusedException(new LotDecided(gated.Lot.Number));
 
-        var setting = await SettingOfLotAsync(act.Db, lotId, cancellationToken);
-        RefuseRole(setting, user);
+        var setting = await SigningRules.SettingOfLotAsync(act.Db, lotId, cancellationToken);
         _ = DecisionWords.TryParse(request.Decision, out var word);
         var standing = await LotStanding.ReadAsync(act.Db, lotId, cancellationToken);
-        if (Against(word, gated.Lot, standing, setting) is [var blocker, ..])
+        if (SigningRules.Against(word, gated.Lot, standing, setting) is [var blocker, ..])
             throw new RefusedException(new StandsAgainst(blocker));
 
         var evidence = await DecisionEvidence.ReadAsync(act.Db, gated.Lot, standing, cancellationToken);
-        var own = evidence.Runs.Count(r => r.ById == act.ById);
-        if (setting.SigningExcludesOwnRuns && own > 0)
-            throw new RefusedException(new OwnRuns(own));
+        if (SigningRules.AgainstSigner(setting, user, act.ById, evidence) is { } wrongSigner)
+            throw new RefusedException(wrongSigner);
 
         var masks = await LotUnits.MasksOfAsync(standing, material, cancellationToken);
         var ordinal = await act.Db.Decisions.CountAsync(d => d.LotId == lotId, cancellationToken) + 1;
+        if (request.Seen is { } seen && seen != EvidenceDigest.Of(gated.Lot, ordinal, standing, evidence))
+            throw new RefusedException(new EvidenceChanged(gated.Lot.Number));
+
         var draft = new DecisionDraft(gated.Lot, ordinal, standing, evidence, masks);
-        return await KeepAsync(act, draft, word, request.Reason?.Trim() ?? "", Recommend(gated.Lot, standing, setting), cancellationToken);
+        return await KeepAsync(act, draft, word, request.Reason?.Trim() ?? "", SigningRules.Recommend(gated.Lot, standing, setting), cancellationToken);
     }
 
     private static async Task<Decision> KeepAsync(
@@ -94,31 +96,5 @@ internal static class DecideLot
             });
         await act.SaveOrRefuseAsync(() => new LotDecided(draft.Lot.Number), cancellationToken);
         return decision;
-    }
-
-    private static IReadOnlyList<Blocker> Against(DecisionWord word, Lot lot, LotStanding standing, DeviceSetting setting) => word == DecisionWord.Reject
-        ? ApprovalBlockers.AnyDecision(lot.Size, standing.Tally, setting.SigningNeedsTwo)
-        : ApprovalBlockers.Of(lot.Size, standing.Conditions, standing.Tally, setting.SigningNeedsTwo, word == DecisionWord.ApproveWithConcession);
-
-    private static Recommendation Recommend(Lot lot, LotStanding standing, DeviceSetting setting)
-    {
-        var plain = Against(DecisionWord.Approve, lot, standing, setting);
-        if (plain.Count == 0)
-            return new Recommendation(DecisionWord.Approve, "Every unit passes or is withdrawn: the lot may be approved.");
-        return Against(DecisionWord.ApproveWithConcession, lot, standing, setting).Count == 0
-            ? new Recommendation(DecisionWord.ApproveWithConcession, "Every unit passes, is withdrawn or is under concession: the lot may be approved with concession.")
-            : new Recommendation(DecisionWord.Reject, string.Join(' ', plain.Select(b => b.Sentence)));
-    }
-
-    private static async Task<DeviceSetting> SettingOfLotAsync(ResponseLedgerContext db, Guid lotId, CancellationToken cancellationToken)
-        => await db.DeviceSettings.AsNoTracking()
-            .Where(s => db.Lots.Any(l => l.Id == lotId && l.DeviceId == s.DeviceId))
-            .OrderByDescending(s => s.Number)
-            .FirstOrDefaultAsync(cancellationToken) ?? throw new RefusedException(new NothingThere("lot"));
-
-    private static void RefuseRole(DeviceSetting setting, ClaimsPrincipal user)
-    {
-        if (setting.SigningNeedsQuality && !CurrentActor.Holds(user, Roles.Quality))
-            throw new RefusedException(new NotAllowed("This device's lots are signed by the role quality only."));
     }
 }

@@ -18,7 +18,8 @@ internal sealed record DecisionDraft(Lot Lot, int Ordinal, LotStanding Standing,
 {
     private const string RetestReason = "A run of the unit in this condition that was received earlier counts.";
 
-    private static readonly DecisionRule SimpleAcceptance = new(
+    /// <summary>The one decision rule of this version.</summary>
+    public static readonly DecisionRule SimpleAcceptance = new(
         "simpleAcceptance",
         "Simple acceptance: a margin of zero or more passes, and the measurement's uncertainty is not added. At the limit itself the risk of accepting falsely is up to 50 % (ILAC-G8:09/2019, 4.2).");
 
@@ -58,7 +59,8 @@ internal sealed record DecisionDraft(Lot Lot, int Ordinal, LotStanding Standing,
                VerdictId = run.VerdictId,
            };
 
-    private static string MeaningOf(DecisionWord word) => word switch
+    /// <summary>What the signature under a decision means (21 CFR 11.50).</summary>
+    public static string MeaningOf(DecisionWord word) => word switch
     {
         DecisionWord.Approve => "I have reviewed the evidence of this lot and approve the lot for release.",
         DecisionWord.ApproveWithConcession => "I have reviewed the evidence of this lot and approve the lot for release under the concessions named in this record.",

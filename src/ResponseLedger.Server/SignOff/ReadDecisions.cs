@@ -21,14 +21,14 @@ internal static class ReadDecisions
         var decisions = await WithReopening(db, db.Decisions.Where(d => d.LotId == id && d.Ordinal < before))
             .OrderByDescending(d => d.Decision.Ordinal).Take(count + 1).ToListAsync(cancellationToken);
         return TypedResults.Ok(Paging.Cut(
-            decisions, count, d => DecisionView.Of(d.Decision, d.Undone, withRecord: false), d => new OrdinalKey(d.Decision.Ordinal)));
+            decisions, count, d => DecisionView.Of(d.Decision, d.Undone, d.UndoneBy, withRecord: false), d => new OrdinalKey(d.Decision.Ordinal)));
     }
 
     public static async Task<Ok<DecisionView>> GetAsync(Guid id, ResponseLedgerContext db, CancellationToken cancellationToken)
     {
         var found = await WithReopening(db, db.Decisions.Where(d => d.Id == id)).SingleOrDefaultAsync(cancellationToken)
             ?? throw new RefusedException(new NothingThere("decision"));
-        return TypedResults.Ok(DecisionView.Of(found.Decision, found.Undone, withRecord: true));
+        return TypedResults.Ok(DecisionView.Of(found.Decision, found.Undone, found.UndoneBy, withRecord: true));
     }
 
     public static async Task<FileContentHttpResult> RecordAsync(Guid id, ResponseLedgerContext db, CancellationToken cancellationToken)
@@ -42,7 +42,12 @@ internal static class ReadDecisions
         => from decision in decisions.AsNoTracking()
            join undone in db.Reopenings.AsNoTracking() on decision.Id equals undone.DecisionId into reopenings
            from undone in reopenings.DefaultIfEmpty()
-           select new DecisionAndReopening { Decision = decision, Undone = undone };
+           select new DecisionAndReopening
+           {
+               Decision = decision,
+               Undone = undone,
+               UndoneBy = db.Users.Where(p => p.Id == undone!.ById).Select(p => p.DisplayName).FirstOrDefault(),
+           };
 
     private sealed record OrdinalKey(int Ordinal);
 
@@ -50,5 +55,7 @@ internal static class ReadDecisions
     {
         public required Decision Decision { get; init; }
         public required Reopening? Undone { get; init; }
+
+        public required string? UndoneBy { get; init; }
     }
 }

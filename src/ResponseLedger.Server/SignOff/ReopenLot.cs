@@ -37,7 +37,7 @@ internal static class ReopenLot
         foreach (var condition in conditions)
             await reevaluation.RunAsync(condition, cancellationToken);
         return TypedResults.Created(
-            $"/api/lots/{id}", new ReopeningView(reopening.DecisionId, id, reopening.DecisionId, reopening.Reason, reopening.At, reopening.ById));
+            $"/api/lots/{id}", new ReopeningView(reopening.DecisionId, id, reopening.DecisionId, reopening.Reason, reopening.At, reopening.ById, CurrentActor.Of(user).Name));
     }
 
     private static async Task<Reopening> ReopenAsync(Act act, Guid lotId, string reason, CancellationToken cancellationToken)

@@ -15,6 +15,9 @@ internal sealed record UnitPasses(string Serial)
 internal sealed record OwnRuns(int Count)
     : Refusal(StatusCodes.Status409Conflict, "ownRuns", $"{Count} of the lot's runs were sent by you, and the device lets nobody sign for runs of their own. Somebody else must sign.");
 
+internal sealed record EvidenceChanged(string Number)
+    : Refusal(StatusCodes.Status409Conflict, "evidenceChanged", $"What stands under lot {Number} has changed since it was shown to you, so nothing was signed. Look at it again, then sign.");
+
 internal sealed record StandsAgainst(Blocker Blocker)
     : Refusal(StatusCodes.Status409Conflict, Blocker.Code, Blocker.Sentence);
 

@@ -8,7 +8,8 @@ namespace ResponseLedger.Server.SignOff;
 /// <param name="Decision">approve, approveWithConcession or reject.</param>
 /// <param name="Reason">Needed for a rejection and for a concession; at most 1,000 characters.</param>
 /// <param name="Password">The signer's password, given again.</param>
-internal sealed record NewDecision(string? Decision, string? Reason, string? Password);
+/// <param name="Seen">The digest of what the signer was shown (<c>GET /api/lots/{id}/signing</c>); left out, nothing is compared.</param>
+internal sealed record NewDecision(string? Decision, string? Reason, string? Password, string? Seen = null);
 
 /// <summary>What becomes of a unit that does not pass.</summary>
 /// <param name="Disposition">rework, scrap, return or concession.</param>

@@ -20,6 +20,9 @@ internal static class SignOffRoutes
         lots.MapPost("/decisions", DecideLot.HandleAsync).Validated<NewDecision>().RequireAuthorization(Policies.Sign)
             .WithName("decideLot").WithSummary("Signs a decision on a lot; the record pins everything that it rests on.")
             .ProducesProblem(StatusCodes.Status403Forbidden).ProducesProblem(StatusCodes.Status409Conflict);
+        lots.MapGet("/signing", ReadSigning.GetAsync).RequireAuthorization(Policies.Sign)
+            .WithName("getSigning").WithSummary("What a decision signed now would pin and mean, what stands against each, and the digest `seen` that a decision may send back.")
+            .ProducesProblem(StatusCodes.Status409Conflict);
         lots.MapGet("/decisions", ReadDecisions.ListAsync)
             .WithName("listDecisions").WithSummary("The decisions on a lot, newest first, with the reopening that undid each.")
             .ProducesValidationProblem(StatusCodes.Status422UnprocessableEntity);

@@ -32,7 +32,7 @@ internal sealed record DecisionView(
 {
     /// <summary>Everything shown is read out of the bytes that were signed.</summary>
     /// <exception cref="InvalidDataException">The stored record cannot be read: the store was changed behind the server's back.</exception>
-    public static DecisionView Of(Decision decision, Reopening? undone, bool withRecord)
+    public static DecisionView Of(Decision decision, Reopening? undone, string? undoneBy, bool withRecord)
     {
         if (!DecisionDocument.TryParse(decision.Record, out var document, out var problems))
             throw new InvalidDataException($"The record of decision {decision.Id} cannot be read: {problems[0].Sentence}");
@@ -48,7 +48,7 @@ internal sealed record DecisionView(
             record.Meaning,
             record.SignedAt,
             Convert.ToHexStringLower(document.Sha256.Span),
-            undone is null ? null : new ReopeningView(undone.DecisionId, undone.LotId, undone.DecisionId, undone.Reason, undone.At, undone.ById),
+            undone is null ? null : new ReopeningView(undone.DecisionId, undone.LotId, undone.DecisionId, undone.Reason, undone.At, undone.ById, undoneBy),
             withRecord ? JsonElement.Parse(decision.Record) : null);
     }
 }
@@ -60,7 +60,8 @@ internal sealed record DecisionView(
 /// <param name="Reason">Why.</param>
 /// <param name="At">When.</param>
 /// <param name="ById">Who.</param>
-internal sealed record ReopeningView(Guid Id, Guid LotId, Guid DecisionId, string Reason, DateTimeOffset At, Guid ById);
+/// <param name="By">Their name.</param>
+internal sealed record ReopeningView(Guid Id, Guid LotId, Guid DecisionId, string Reason, DateTimeOffset At, Guid ById, string? By);
 
 /// <summary>A disposition of a unit.</summary>
 /// <param name="Id">The disposition.</param>

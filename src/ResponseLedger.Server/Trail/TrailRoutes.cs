@@ -1,15 +1,21 @@
+using System.Text;
 using System.Text.Json;
 using Microsoft.EntityFrameworkCore;
 using ResponseLedger.Ledger;
 using ResponseLedger.Server.Http;
 using ResponseLedger.Server.People;
 using ResponseLedger.Store;
+using ResponseLedger.Store.Model;
 
 namespace ResponseLedger.Server.Trail;
 
 /// <summary>The ledger, read in the order of its positions.</summary>
 internal static class TrailRoutes
 {
+    private const string Oldest = "oldest";
+    private const string Newest = "newest";
+    private const int LongestText = 200;
+
     public static void AddServices(IServiceCollection services)
     {
     }
@@ -17,12 +23,15 @@ internal static class TrailRoutes
     public static void Map(IEndpointRouteBuilder api)
         => api.MapGet("/ledger/entries", ReadAsync).RequireAuthorization(Policies.Read).WithTags("Ledger")
             .WithName("ReadLedger")
-            .WithSummary("Entries after a position, each as JSON and as its exact bytes. Next is the position to go on after, null at the end.")
+            .WithSummary("Entries after a position, each as JSON and as its exact bytes. Next is the position to go on after, null at the end. With `order=newest` they come newest first, and next is the position to go on before. `kind` is a kind (run.received) or the part before its point (run); `search` is text that stands in an entry's bytes, such as an id or a serial number.")
             .Produces<EntriesPage>()
             .ProducesProblem(StatusCodes.Status422UnprocessableEntity);
 
     /// <summary>A page of the ledger.</summary>
-    internal sealed record EntriesPage(IReadOnlyList<EntryShown> Items, long? Next);
+    /// <param name="Items">Its entries.</param>
+    /// <param name="Next">Where to go on, or null at the end.</param>
+    /// <param name="Size">How many entries the ledger has, whatever was asked for.</param>
+    internal sealed record EntriesPage(IReadOnlyList<EntryShown> Items, long? Next, long Size);
 
     /// <summary>An entry.</summary>
     /// <param name="Position">Where it stands, from 0 without gaps.</param>
@@ -33,16 +42,23 @@ internal static class TrailRoutes
     /// <param name="Bytes">The exact bytes, in base64.</param>
     internal sealed record EntryShown(long Position, string Kind, DateTimeOffset At, string Sha256, JsonElement Entry, byte[] Bytes);
 
-    private static async Task ReadAsync(ResponseLedgerContext db, HttpContext http, long? after, int? limit, CancellationToken cancellationToken)
+    private static async Task ReadAsync(
+        ResponseLedgerContext db, HttpContext http, long? after, long? before, string? order, string? kind, string? search, int? limit, CancellationToken cancellationToken)
     {
         var take = Paging.Limit(limit);
-        var last = after ?? -1;
-        var rows = await (
+        if (order is not (null or "" or Oldest or Newest))
+            throw new RefusedException(new FieldRefused("order", $"The order is {Oldest} or {Newest}."));
+        var size = 1 + (await db.LedgerPositions.MaxAsync(p => (long?)p.Position, cancellationToken) ?? -1);
+
+        // What came meanwhile is left out, so that size and items speak of one moment.
+        var end = Math.Min(before ?? size, size);
+        var found =
             from position in db.LedgerPositions
-            join entry in db.LedgerEntries on position.EntryId equals entry.Id
-            where position.Position > last
-            orderby position.Position
-            select new { position.Position, entry.Kind, entry.At, entry.Bytes }).AsNoTracking().Take(take + 1).ToListAsync(cancellationToken);
+            join entry in Entries(db, Given("kind", kind), Given("search", search)) on position.EntryId equals entry.Id
+            where position.Position < end && (after == null || position.Position > after)
+            select new { position.Position, entry.Kind, entry.At, entry.Bytes };
+        var rows = await (order == Newest ? found.OrderByDescending(r => r.Position) : found.OrderBy(r => r.Position))
+            .AsNoTracking().Take(take + 1).ToListAsync(cancellationToken);
 
         http.Response.ContentType = "application/json; charset=utf-8";
         await using var writer = new Utf8JsonWriter(http.Response.BodyWriter);
@@ -66,7 +82,26 @@ internal static class TrailRoutes
             writer.WriteNumber("next", rows[take - 1].Position);
         else
             writer.WriteNull("next");
+        writer.WriteNumber("size", size);
         writer.WriteEndObject();
         await writer.FlushAsync(cancellationToken);
     }
+
+    private static IQueryable<LedgerEntryRow> Entries(ResponseLedgerContext db, string? kind, string? search)
+    {
+        var entries = db.LedgerEntries.AsQueryable();
+        if (search is not null)
+        {
+            // Canonical JSON escapes little and orders nothing anew, so that text is found in the bytes as it was written.
+            var bytes = Encoding.UTF8.GetBytes(search);
+            entries = db.LedgerEntries.FromSql($"select * from ledger_entry where position({bytes} in bytes) > 0");
+        }
+
+        return kind is null ? entries : entries.Where(e => e.Kind == kind || e.Kind.StartsWith(kind + "."));
+    }
+
+    private static string? Given(string name, string? text)
+        => text?.Length > LongestText || text?.Contains('\0', StringComparison.Ordinal) == true
+            ? throw new RefusedException(new FieldRefused(name, $"At most {LongestText} characters, none of them zero."))
+            : string.IsNullOrWhiteSpace(text) ? null : text.Trim();
 }

@@ -45,7 +45,9 @@ public sealed class HeaderTests(Lab lab)
         using var again = new HttpRequestMessage(HttpMethod.Get, "/");
         again.Headers.IfNoneMatch.Add(shell.Headers.ETag!);
         Assert.Equal(HttpStatusCode.NotModified, (await client.SendAsync(again)).StatusCode);
-        foreach (var address in html.Split('"').Where(part => part.StartsWith("/a/", StringComparison.Ordinal)))
+
+        // An address that ends in a slash is a row of the import map that stands for a folder.
+        foreach (var address in html.Split('"').Where(part => part.StartsWith("/a/", StringComparison.Ordinal) && !part.EndsWith('/')))
         {
             using var file = await client.GetAsync(address);
             Assert.True(file.StatusCode == HttpStatusCode.OK, $"{address} answered {(int)file.StatusCode}");

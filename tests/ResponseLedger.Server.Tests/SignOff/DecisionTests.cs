@@ -92,10 +92,12 @@ public sealed class DecisionTests(Lab lab)
         await scene.SendAsync("b", 3);
 
         var problem = await (await scene.DecideAsync("approve")).ShouldRefuseAsync(HttpStatusCode.Conflict, "unitsNotPassed");
-        Assert.Contains("2 of 3", problem.GetProperty("detail").GetString(), StringComparison.Ordinal);
+        Assert.Contains("2 of 3 units neither pass nor are withdrawn: 1 fails, 1 is not fully tested.", problem.GetProperty("detail").GetString(), StringComparison.Ordinal);
 
+        // The unit that was withdrawn fails still, and is in nobody's way.
         await (await scene.DispositionAsync("b", "scrap")).ShouldBeAsync(HttpStatusCode.Created);
-        await (await scene.DecideAsync("approve")).ShouldRefuseAsync(HttpStatusCode.Conflict, "unitsNotPassed");
+        problem = await (await scene.DecideAsync("approve")).ShouldRefuseAsync(HttpStatusCode.Conflict, "unitsNotPassed");
+        Assert.Contains("1 of 3 units neither passes nor is withdrawn.", problem.GetProperty("detail").GetString(), StringComparison.Ordinal);
         await scene.SendAsync("c", 0);
         await (await scene.DecideAsync("approve")).ShouldBeAsync(HttpStatusCode.Created);
 

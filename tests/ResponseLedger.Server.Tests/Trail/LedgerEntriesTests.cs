@@ -50,7 +50,38 @@ public sealed class LedgerEntriesTests(Lab lab)
         Assert.Equal(Lab.ManagerEmail, entry.GetProperty("subject").GetProperty("email").GetString());
     }
 
+    [Fact]
+    public async Task Newest_first_is_the_same_ledger_backwards()
+    {
+        var auditor = await lab.SignInAsync("auditor");
+        await lab.Services.GetRequiredService<LedgerSequencer>().GiveAsync(TestContext.Current.CancellationToken);
+        var newest = await (await auditor.GetAsync("/api/ledger/entries?order=newest&limit=2")).ShouldBeAsync(HttpStatusCode.OK);
+        var size = newest.GetProperty("size").GetInt64();
+        var positions = newest.GetProperty("items").EnumerateArray().Select(i => i.GetProperty("position").GetInt64()).ToArray();
+
+        Assert.Equal([size - 1, size - 2], positions);
+        var next = newest.GetProperty("next").GetInt64();
+        var older = await (await auditor.GetAsync($"/api/ledger/entries?order=newest&limit=500&before={next}")).ShouldBeAsync(HttpStatusCode.OK);
+        Assert.Equal(next - 1, older.GetProperty("items")[0].GetProperty("position").GetInt64());
+    }
+
+    [Fact]
+    public async Task Entries_are_found_by_kind_and_by_what_stands_in_them()
+    {
+        var (email, _) = await lab.NewPersonAsync("operator");
+        await lab.Services.GetRequiredService<LedgerSequencer>().GiveAsync(TestContext.Current.CancellationToken);
+        var auditor = await lab.SignInAsync("auditor");
+
+        foreach (var (query, expected) in new[] { ("", 1), ("&kind=person", 1), ("&kind=person.created", 1), ("&kind=pers", 0), ("&kind=run", 0) })
+        {
+            var page = await (await auditor.GetAsync($"/api/ledger/entries?search={email}{query}")).ShouldBeAsync(HttpStatusCode.OK);
+            Assert.True(page.GetProperty("items").GetArrayLength() == expected, $"{query}: {page}");
+        }
+    }
+
     [Theory]
+    [InlineData("order=strange", HttpStatusCode.UnprocessableEntity)]
+    [InlineData("kind=a%00b", HttpStatusCode.UnprocessableEntity)]
     [InlineData("limit=0", HttpStatusCode.UnprocessableEntity)]
     [InlineData("limit=501", HttpStatusCode.UnprocessableEntity)]
     [InlineData("after=somewhere", HttpStatusCode.BadRequest)]
