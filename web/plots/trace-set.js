@@ -12,7 +12,7 @@ import { onGrid, unionOf } from './curve.js';
 /** @typedef {Float64Array | (number | null)[]} GivenNumbers */
 /** @typedef {{runId: string, serial: string, outcome?: string | null, values: GivenNumbers}} GivenRun */
 /** @typedef {{name: string, side: string, frequencyHz?: GivenNumbers, values?: GivenNumbers, corners?: {frequencyHz: number, value: number}[]}} GivenLimit */
-/** @typedef {{quantity: string, basis?: string, unit?: string, frequencyHz: GivenNumbers, runs: GivenRun[], golden?: GivenRun | null, limits?: GivenLimit[], notes?: {code: string, message: string}[]}} Overlay */
+/** @typedef {{quantity: string, basis?: string, unit?: string, frequencyHz: GivenNumbers, runs: GivenRun[], golden?: GivenRun | null, limits?: GivenLimit[]}} Overlay */
 /** @typedef {{frequencyHz: number[], gainDb: (number | null)[], phaseDeg?: (number | null)[] | null, delaySeconds?: (number | null)[] | null}} Trace */
 
 const usualUnits = new Map([['gain', 'dB'], ['phase', 'deg'], ['delay', 's']]);
