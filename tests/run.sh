@@ -139,7 +139,7 @@ fi
 for project in House.Tests Engine.Tests Formats.Tests Ledger.Tests Records.Tests; do
   wanted $project && run_tests $project local RESPONSELEDGER_TEST_DATABASE=local
 done
-for project in Store.Tests Server.Tests; do
+for project in Store.Tests Server.Tests Bench.Tests; do
   wanted $project && run_tests $project local RESPONSELEDGER_TEST_DATABASE=local
 done
 

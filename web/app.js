@@ -3,6 +3,7 @@
 import { ask, onSignedOut } from './api.js';
 import { render } from 'lit';
 import { html } from './parts/element.js';
+import { acceptDrops } from './parts/file-drop.js';
 import { signInAgain } from './parts/sign-in-again.js';
 import { say } from './parts/notice.js';
 import { go, matchRoute, start } from './router.js';
@@ -33,6 +34,7 @@ async function begin() {
 
   onSignedOut(signInAgain);
   session.addEventListener('change', () => void arrive(true));
+  acceptDrops();
   nav.addEventListener('sign-out', () => void signOut());
   main.replaceChildren();
   start(() => void arrive(false));

@@ -12,5 +12,8 @@ export const routes = [
   { pattern: '/tokens', tag: 'rl-page-tokens', load: () => import('./pages/tokens.js'), title: 'Tokens', roles: may.manage },
   { pattern: '/ledger', tag: 'rl-page-ledger', load: () => import('./pages/ledger.js'), title: 'Ledger' },
   { pattern: '/checklist', tag: 'rl-page-checklist', load: () => import('./pages/checklist.js'), title: 'Checklist', roles: may.manage },
+  { pattern: '/runs', tag: 'rl-page-runs', load: () => import('./pages/runs.js'), title: 'Runs' },
+  { pattern: '/runs/{id}', tag: 'rl-page-run', load: () => import('./pages/run.js'), title: 'Run' },
+  { pattern: '/send', tag: 'rl-page-send', load: () => import('./pages/send.js'), title: 'Send files', roles: may.operate },
   { pattern: '/password', tag: 'rl-page-password', load: () => import('./pages/password.js'), title: 'Change password' },
 ];

@@ -1,126 +1,112 @@
 using System.CommandLine;
-using System.Net;
 using System.Net.Http.Headers;
-using System.Text.Json;
 
 namespace ResponseLedger.Bench;
 
 /// <summary>
 /// <c>send FILE...</c>: sends each file as a run of its own and prints its verdict. A file that was sent before is answered
-/// as a duplicate, so a broken connection is simply tried again.
+/// as a duplicate, so a call that was broken off is simply made again.
 /// </summary>
 internal static class SendCommand
 {
-    private const int MostTries = 5;
+    private const string AddressVariable = "RESPONSELEDGER_SERVER";
 
-    public static Command Create(TextWriter output, Func<HttpClient> connect)
+    // The name in the call, the name in the request, and what it is.
+    private static readonly (string Option, string Field, string Description)[] Fields =
+    [
+        ("--device", "device", "Part number, PART/REV or id of the device."),
+        ("--lot", "lot", "Number or id of the lot."),
+        ("--bench", "bench", "Name or id of the bench; only for a token that is not bound to one."),
+        ("--serial", "serial", "Serial number of the unit, for one file. Left out: found in each file's name."),
+        ("--purpose", "purpose", "production (where left out), golden, through, check or study."),
+        ("--condition", "condition", "Name or id of the condition. Left out: the device's first."),
+        ("--measured-at", "measuredAt", "When it was measured, such as 2026-03-01T09:30:00Z. Left out: when it is received."),
+        ("--columns", "columns", "What the columns hold, where the heads leave it open: JSON, as the refusal of such a file shows it."),
+        ("--circumstances", "circumstances", "JSON with temperatureC, driveVrms, sourceOhm, loadOhm, instruments."),
+        ("--acknowledge", "acknowledge", "sameFileOtherUnit: the same bytes are meant for another unit of the lot too."),
+    ];
+
+    public static Command Create(Surroundings surroundings)
     {
-        var files = new Argument<FileInfo[]>("files") { Description = "Sweep files, one a run.", Arity = ArgumentArity.OneOrMore };
-        files.AcceptExistingOnly();
-        var server = new Option<Uri>("--server") { Description = "Address of the server.", DefaultValueFactory = _ => new Uri("http://127.0.0.1:5080") };
-        var token = new Option<FileInfo>("--token-file") { Description = "File that holds the bench's token. Left out: the environment variable RESPONSELEDGER_TOKEN." };
-        token.AcceptExistingOnly();
-        var device = new Option<string>("--device") { Description = "Part number, PART/REV or id of the device.", Required = true };
-        string[] plain = ["lot", "bench", "serial", "purpose", "condition"];
-        var fields = plain.ToDictionary(name => name, name => new Option<string?>($"--{name}") { Description = $"The run's {name}." });
-        var command = new Command("send", "Sends sweep files and prints each unit's verdict.") { files, server, token, device };
-        foreach (var option in fields.Values)
+        var files = new Argument<string[]>("files") { Description = "Sweep files or patterns such as *.csv, one file a run.", Arity = ArgumentArity.OneOrMore };
+        var server = new Option<string?>("--server") { Description = $"Address of the server. Left out: the environment variable {AddressVariable}, else {ServerAddress.Usual}." };
+        var plain = new Option<bool>("--allow-plain-http") { Description = "Lets the token go unencrypted to another machine." };
+        var token = new Option<string?>("--token-file") { Description = $"File that holds the bench's token. Left out: the environment variable {BenchToken.Variable}." };
+        var command = new Command("send", "Sends sweep files and prints each unit's verdict.") { files, server, plain, token };
+        var options = Fields.ToDictionary(f => f.Field, f => new Option<string?>(f.Option) { Description = f.Description });
+        foreach (var option in options.Values)
             command.Options.Add(option);
         command.SetAction(async (parsed, cancellationToken) =>
         {
-            var secret = parsed.GetValue(token) is { } secretFile
-                ? (await File.ReadAllTextAsync(secretFile.FullName, cancellationToken)).Trim()
-                : Environment.GetEnvironmentVariable("RESPONSELEDGER_TOKEN");
-            if (string.IsNullOrEmpty(secret))
+            var problems = new List<string>();
+            var found = GivenFiles.Find(parsed.GetRequiredValue(files), out var missing);
+            problems.AddRange(missing);
+            var secret = BenchToken.Read(parsed.GetValue(token), surroundings.Variable, out var tokenProblem);
+            var address = ServerAddress.Read(
+                parsed.GetValue(server) ?? (surroundings.Variable(AddressVariable) is { Length: > 0 } named ? named : ServerAddress.Usual),
+                parsed.GetValue(plain), out var addressProblem);
+            if (parsed.GetValue(options["serial"]) is not null && found.Count > 1)
+                problems.Add("--serial names one unit, and there are several files. Send each with its own, or leave it out.");
+            problems.AddRange(new[] { tokenProblem, addressProblem }.OfType<string>());
+            if (problems.Count > 0)
             {
-                output.WriteLine("No token: name its file with --token-file, or set RESPONSELEDGER_TOKEN.");
+                foreach (var problem in problems)
+                    await surroundings.Errors.WriteLineAsync(problem);
                 return ExitCodes.NotDone;
             }
 
-            using var client = connect();
-            client.BaseAddress = parsed.GetRequiredValue(server);
+            using var client = surroundings.Connect();
+            client.BaseAddress = address;
             client.DefaultRequestHeaders.Authorization = new AuthenticationHeaderValue("Bearer", secret);
-            var told = new Dictionary<string, string> { ["device"] = parsed.GetRequiredValue(device) };
-            foreach (var (name, option) in fields)
-            {
-                if (parsed.GetValue(option) is { } value)
-                    told[name] = value;
-            }
-
-            var worst = ExitCodes.InOrder;
-            foreach (var file in parsed.GetRequiredValue(files))
-                worst = Math.Max(worst, await SendAsync(output, client, told, file, cancellationToken));
-            return worst;
+            var told = options.Select(o => (o.Key, Value: parsed.GetValue(o.Value))).Where(o => o.Value is not null).ToDictionary(o => o.Key, o => o.Value!);
+            return await SendAllAsync(surroundings, client, found, told, cancellationToken);
         });
         return command;
     }
 
-    private static async Task<int> SendAsync(TextWriter output, HttpClient client, Dictionary<string, string> told, FileInfo file, CancellationToken cancellationToken)
+    private static async Task<int> SendAllAsync(
+        Surroundings surroundings, HttpClient client, IReadOnlyList<GivenFile> files, Dictionary<string, string> fields, CancellationToken cancellationToken)
     {
-        for (var attempt = 1; ; attempt++)
-        {
-            try
-            {
-                using var form = new MultipartFormDataContent();
-                foreach (var (name, value) in told)
-                    form.Add(new StringContent(value), name);
-                form.Add(new ByteArrayContent(await File.ReadAllBytesAsync(file.FullName, cancellationToken)), "file", file.Name);
-                using var response = await client.PostAsync(new Uri("/api/runs", UriKind.Relative), form, cancellationToken);
-                if (response.StatusCode is not (HttpStatusCode.ServiceUnavailable or HttpStatusCode.TooManyRequests) || attempt >= MostTries)
-                    return Tell(output, file.Name, response.StatusCode, await response.Content.ReadAsByteArrayAsync(cancellationToken));
-            }
-            catch (HttpRequestException exception) when (attempt >= MostTries)
-            {
-                output.WriteLine($"{file.Name}: the server does not answer ({exception.Message})");
-                return ExitCodes.NotDone;
-            }
-            catch (HttpRequestException)
-            {
-                // Sending again is safe: what was taken already is answered as a duplicate.
-            }
-
-            await Task.Delay(TimeSpan.FromSeconds(Math.Pow(2, attempt - 1)), cancellationToken);
-        }
-    }
-
-    private static int Tell(TextWriter output, string name, HttpStatusCode status, byte[] body)
-    {
+        var report = new Report(surroundings.Output, files.Count);
+        var sender = new Sender(client, surroundings.Errors, surroundings.Time);
+        var isProduction = fields.GetValueOrDefault("purpose", "production") == "production";
+        var done = 0;
         try
         {
-            using var answer = JsonDocument.Parse(body);
-            if (answer.RootElement.TryGetProperty("results", out var results) && results.GetArrayLength() > 0)
-                return Tell(output, name, results[0]);
-            output.WriteLine($"{name}: {(int)status}, {(answer.RootElement.TryGetProperty("detail", out var detail) ? detail.GetString() : "no reason given")}");
+            for (var goesOn = true; goesOn && done < files.Count; done++)
+                goesOn = await SendAsync(sender, report, files[done], fields, isProduction, client.BaseAddress!, cancellationToken);
         }
-        catch (JsonException)
+        catch (OperationCanceledException)
         {
-            output.WriteLine($"{name}: {(int)status}, and no answer that this client understands");
+            await surroundings.Errors.WriteLineAsync("Stopped.");
         }
 
-        return ExitCodes.NotDone;
+        if (done < files.Count)
+        {
+            report.Count("not sent", files.Count - done, ExitCodes.NotDone);
+            await surroundings.Errors.WriteLineAsync($"Not sent: {files[done].Shown}{(files.Count - done > 1 ? " and all after it" : "")}. Make the same call again: what was taken is answered as sent before.");
+        }
+
+        report.Summary();
+        return report.ExitCode;
     }
 
-    private static int Tell(TextWriter output, string name, JsonElement result)
+    // Whether to go on with the next file: not when what stands against this one stands against all.
+    private static async Task<bool> SendAsync(
+        Sender sender, Report report, GivenFile file, Dictionary<string, string> fields, bool isProduction, Uri server, CancellationToken cancellationToken)
     {
-        var outcome = result.GetProperty("outcome").GetString();
-        var verdict = result.TryGetProperty("verdict", out var found) && found.ValueKind == JsonValueKind.Object
-            && found.TryGetProperty("outcome", out var word) ? word.GetString() : null;
-        output.WriteLine($"{name}: {outcome}{(verdict is null ? "" : $", {verdict}")}");
-        if (verdict is not null && found.TryGetProperty("worst", out var worst) && worst.ValueKind == JsonValueKind.Object)
-            output.WriteLine($"  nearest to a limit: {worst.GetProperty("criterion").GetString()}, margin {worst.GetProperty("margin").GetRawText()} {worst.GetProperty("unit").GetString()}");
-        foreach (var note in Items(result, "notes"))
-            output.WriteLine($"  {Sentence(note)}");
-        foreach (var issue in Items(result, "issues"))
-            output.WriteLine($"  {CheckCommand.Place(Number(issue, "line"), Number(issue, "column"))}{Sentence(issue)}");
-        return outcome != "refused" && verdict is null or "pass" or "conditionalPass" ? ExitCodes.InOrder : ExitCodes.NotInOrder;
+        byte[] content;
+        try
+        {
+            content = await File.ReadAllBytesAsync(file.Path, cancellationToken);
+        }
+        catch (Exception barred) when (barred is IOException or UnauthorizedAccessException)
+        {
+            report.File(file, $"cannot be opened. {barred.Message}", "cannot be opened", ExitCodes.NotDone);
+            return true;
+        }
+
+        var sent = await sender.SendAsync(file, content, fields, cancellationToken);
+        return RunAnswer.Tell(report, file, sent, isProduction, server);
     }
-
-    private static JsonElement.ArrayEnumerator Items(JsonElement result, string name)
-        => result.TryGetProperty(name, out var items) && items.ValueKind == JsonValueKind.Array ? items.EnumerateArray() : default;
-
-    private static string Sentence(JsonElement item)
-        => item.ValueKind == JsonValueKind.String ? item.GetString()! : item.TryGetProperty("message", out var message) ? message.GetString()! : item.GetRawText();
-
-    private static int? Number(JsonElement item, string name)
-        => item.TryGetProperty(name, out var value) && value.ValueKind == JsonValueKind.Number ? value.GetInt32() : null;
 }

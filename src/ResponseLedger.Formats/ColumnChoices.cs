@@ -49,7 +49,7 @@ public sealed record ColumnChoices(IReadOnlyList<ColumnChoice> Columns, string? 
                         return false;
                     }
 
-                    parameter = named.GetString();
+                    parameter = TextOf(named);
                 }
 
                 if (!list.TryGetProperty("columns", out JsonElement inner) || inner.ValueKind == JsonValueKind.Null)
@@ -129,7 +129,7 @@ public sealed record ColumnChoices(IReadOnlyList<ColumnChoice> Columns, string? 
             || !column.TryGetInt32(out int number) || number is < 1 or > LargestColumn)
             return $"A column number is missing or outside 1 to {LargestColumn}.";
         if (!entry.TryGetProperty("quantity", out JsonElement named) || named.ValueKind != JsonValueKind.String
-            || !TryQuantity(named.GetString()!, out ColumnQuantity quantity))
+            || !TryQuantity(TextOf(named), out ColumnQuantity quantity))
         {
             return $"Column {number} has no known quantity; known are "
                 + string.Join(", ", Enum.GetNames<ColumnQuantity>().Select(JsonNamingPolicy.CamelCase.ConvertName)) + ".";
@@ -140,11 +140,24 @@ public sealed record ColumnChoices(IReadOnlyList<ColumnChoice> Columns, string? 
         {
             if (stated.ValueKind != JsonValueKind.String)
                 return $"The unit of column {number} is not a text.";
-            unit = stated.GetString()!;
+            unit = TextOf(stated);
         }
 
         choice = new ColumnChoice(number, quantity, unit);
         return null;
+    }
+
+    // A text that is half of a surrogate pair cannot be read; no quantity, unit or parameter is named so.
+    private static string TextOf(JsonElement text)
+    {
+        try
+        {
+            return text.GetString()!;
+        }
+        catch (InvalidOperationException)
+        {
+            return "\uFFFD";
+        }
     }
 
     private static bool TryQuantity(string name, out ColumnQuantity quantity)

@@ -50,6 +50,9 @@ public sealed class ResponseLedgerContext(DbContextOptions<ResponseLedgerContext
     public DbSet<LedgerQueueRow> LedgerQueue => Set<LedgerQueueRow>();
     public DbSet<DataProtectionKey> DataProtectionKeys => Set<DataProtectionKey>();
 
+    /// <summary>Whether an act's transaction is open on it, so that its connection must not be opened anew.</summary>
+    internal bool HoldsTransaction { get; set; }
+
     protected override void OnModelCreating(ModelBuilder builder)
     {
         base.OnModelCreating(builder);

@@ -16,7 +16,7 @@ namespace ResponseLedger.Engine.Tests;
 public sealed class EngineVersionTests
 {
     private const int Version = 1;
-    private const string Digest = "cd5c7200f008b96d8889cde4ae7942da5c15d6e4b36f1ef1d6dcbbde90ae3cfb";
+    private const string Digest = "50617547d0e1815d85dcb11baca074eab4ed6ba47d50dbee0c5c4dd29232ea10";
 
     [Fact]
     public void The_numbers_are_those_of_the_stated_version()
@@ -62,11 +62,26 @@ public sealed class EngineVersionTests
             Write(table, id, run.Judge(limit));
             Write(table, id, run.Judge(Masking.Lower((fromHz, -1), (toHz, -2)).AgainstGolden(), golden));
             Write(table, id, run.Judge(Masking.Upper((fromHz, 3), (toHz, 5)).AgainstGolden().Of(CurveQuantity.PhaseDeg), golden));
+            WriteKinds(table, id, run, golden, fromHz, toHz);
         }
 
         var (lower, upper) = ClopperPearson.TwoSided(7, 125, 0.95);
         table.Append(Say(lower)).Append(' ').Append(Say(upper)).Append('\n');
         return table.ToString();
+    }
+
+    /// <summary>Kinds of results that the measures alone do not show: delay limits, whole turns, requirements, ends, density.</summary>
+    private static void WriteKinds(StringBuilder table, string id, Sweep run, Sweep golden, double fromHz, double toHz)
+    {
+        Write(table, id, run.Judge(Masking.Upper((fromHz, 1e-4), (toHz, 2e-4)).Of(CurveQuantity.DelaySeconds)));
+        Write(table, id, run.Judge(Masking.Lower((fromHz, -1e-5), (toHz, -2e-5)).AgainstGolden().Of(CurveQuantity.DelaySeconds), golden));
+        Write(table, id, run.Judge(Masking.Upper((fromHz, 400), (toHz, 300)).Of(CurveQuantity.PhaseDeg)));
+        Write(table, id, run.Judge(Masking.Require("level", "gainDb", -20, 3, null, ("frequencyHz", fromHz))));
+        Write(table, id, run.Judge(Masking.Upper((run.FrequencyHz[0] / 1.05, 40), (toHz, 40)) with { EndRatio = 1.1 }));
+        Write(table, id, run.Judge(Masking.Upper((fromHz, 40), (toHz, 40)) with { MinPointsPerDecade = 60 }));
+        var pair = new Mask([Masking.Upper((fromHz, 100), (toHz, 100)).Of(CurveQuantity.PhaseDeg), Masking.Lower((fromHz, -250), (toHz, -900)).Of(CurveQuantity.PhaseDeg)], []);
+        foreach (var criterion in MaskEvaluator.Evaluate(run, null, pair, DeviceTraits.Transfer).Criteria)
+            Write(table, id, criterion);
     }
 
     private static void Write(StringBuilder table, string id, MeasureResult result)

@@ -44,6 +44,8 @@ internal sealed class LocalServer : TestServer
     private static string Place()
     {
         const string inMemory = "/dev/shm";
+        if (Environment.GetEnvironmentVariable(TestDatabases.FolderVariable) is { Length: > 0 } named)
+            return named;
         return OperatingSystem.IsLinux() && Directory.Exists(inMemory) && new DriveInfo(inMemory).AvailableFreeSpace > BytesWanted
             ? inMemory
             : Path.GetTempPath();

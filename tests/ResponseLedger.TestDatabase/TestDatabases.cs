@@ -12,6 +12,9 @@ namespace ResponseLedger.TestDatabase;
 /// </summary>
 public static class TestDatabases
 {
+    /// <summary>Name of the environment variable that names the folder in which a local cluster is made; left out, one in memory where there is one.</summary>
+    public const string FolderVariable = "RESPONSELEDGER_TEST_FOLDER";
+
     // What xunit takes for a skip, whatever type the exception has.
     private const string SkipToken = "$XunitDynamicSkip$";
 

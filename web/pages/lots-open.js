@@ -1,4 +1,4 @@
-// Opening a lot: a dialog, and then the lot's page.
+// Opening a lot: a dialog, and then the lot's page or what the caller does with the lot.
 
 import { send } from '../api.js';
 import { html } from '../parts/element.js';
@@ -7,8 +7,15 @@ import { say } from '../parts/notice.js';
 import { parseNumber } from '../numbers.js';
 import { go } from '../router.js';
 
-/** @param {readonly any[]} devices @param {string} [deviceId]   chosen at first */
-export async function openLot(devices, deviceId = devices[0]?.id ?? '') {
+/** Opens a lot and goes to it. @param {readonly any[]} devices @param {string} [deviceId]   chosen at first */
+export async function openLot(devices, deviceId) {
+  const lot = await makeLot(devices, deviceId);
+  if (lot !== null)
+    await go(`/lots/${lot.id}`);
+}
+
+/** Opens a lot; null where nobody did. @param {readonly any[]} devices @param {string} [deviceId]   chosen at first @returns {Promise<any>} */
+export async function makeLot(devices, deviceId = devices[0]?.id ?? '') {
   const made = await formDialog({
     heading: 'Open a lot',
     act: 'Open the lot',
@@ -26,9 +33,9 @@ export async function openLot(devices, deviceId = devices[0]?.id ?? '') {
     },
   });
   if (made === undefined)
-    return;
+    return null;
   say(`Lot ${made.body.number} is open.`);
-  await go(`/lots/${made.body.id}`);
+  return made.body;
 }
 
 /** The problems of single serial numbers stand at the field of all. @param {Record<string, string[]>} errors */

@@ -7,6 +7,7 @@ import { may, session } from '../session.js';
 const work = [
   { href: '/lots', words: 'Lots' },
   { href: '/send', words: 'Send files', roles: may.operate },
+  { href: '/runs', words: 'Runs' },
   { href: '/compare', words: 'Compare' },
   { href: '/devices', words: 'Devices' },
 ];

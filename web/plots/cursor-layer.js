@@ -6,14 +6,15 @@ import { clipped, strokeCurve, write } from './plot-layers.js';
 /** @typedef {import('./plot-chart.js').ChartPanel} ChartPanel */
 /** @typedef {{panel: ChartPanel, frequencyHz: Float64Array, values: Float64Array, name: string, colour: string}} RaisedLine */
 /** @typedef {{panel: ChartPanel, value: number, colour: string}} CursorDot */
+/** A place on a panel that can be dragged. @typedef {{panel: 'upper' | 'lower', frequencyHz: number, value: number}} Handle */
 /** @typedef {{left: number, right: number, top: number, bottom: number}} DrawnBox */
-/** @typedef {{panels: ChartPanel[], atHz: number | null, cursorText: string, raised: RaisedLine[], dots: CursorDot[], box: DrawnBox | null, theme: import('./plot-theme.js').PlotTheme}} CursorScene */
+/** @typedef {{panels: ChartPanel[], atHz: number | null, cursorText: string, raised: RaisedLine[], dots: CursorDot[], handles: Handle[], box: DrawnBox | null, theme: import('./plot-theme.js').PlotTheme}} CursorScene */
 
 /**
  * @param {HTMLCanvasElement} canvas @param {{width: number, height: number}} size in CSS pixels @param {number} pixelRatio
  * @param {CursorScene} scene
  */
-export function paintCursorLayer(canvas, size, pixelRatio, { panels, atHz, cursorText, raised, dots, box, theme }) {
+export function paintCursorLayer(canvas, size, pixelRatio, { panels, atHz, cursorText, raised, dots, handles, box, theme }) {
   const [width, height] = [Math.round(size.width * pixelRatio), Math.round(size.height * pixelRatio)];
   if (canvas.width !== width || canvas.height !== height) {
     canvas.width = width;
@@ -28,6 +29,7 @@ export function paintCursorLayer(canvas, size, pixelRatio, { panels, atHz, curso
   context.clearRect(0, 0, size.width, size.height);
   raised.forEach((line) => paintRaised(context, line, theme));
   if (atHz !== null) paintCursor(context, panels, atHz, cursorText, dots, theme);
+  handles.forEach((handle) => paintHandle(context, panels, handle, theme));
   if (box !== null) paintBox(context, box, theme);
 }
 
@@ -97,6 +99,22 @@ function paintCursor(context, panels, atHz, text, dots, theme) {
   context.textAlign = 'center';
   context.textBaseline = 'middle';
   context.fillText(text, middle, top + (theme.textPx + 6) / 2 + 0.5);
+}
+
+/** @param {CanvasRenderingContext2D} context @param {ChartPanel[]} panels @param {Handle} handle @param {import('./plot-theme.js').PlotTheme} theme */
+function paintHandle(context, panels, handle, theme) {
+  const panel = panels.find(({ key }) => key === handle.panel);
+  if (panel === undefined) return;
+  clipped(context, panel, () => {
+    context.fillStyle = theme.ground;
+    context.strokeStyle = theme.forbidden;
+    context.lineWidth = 2;
+    context.setLineDash([]);
+    context.beginPath();
+    context.rect(panel.x(handle.frequencyHz) - 5, panel.y(handle.value) - 5, 10, 10);
+    context.fill();
+    context.stroke();
+  });
 }
 
 /** @param {CanvasRenderingContext2D} context @param {DrawnBox} box @param {import('./plot-theme.js').PlotTheme} theme */

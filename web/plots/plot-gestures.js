@@ -9,12 +9,16 @@ import { between, carried, logAxis, moved, straightAxis, zoomed } from './spans.
  * @property {() => ChartPanel[]} panels
  * @property {(place: Place | null) => void} point
  * @property {(place: Place) => void} pick
+ * @property {(place: Place) => number} grab the handle under a place; -1 for none
+ * @property {(index: number, place: Place, done: boolean) => void} dragHandle
  * @property {(box: import('./cursor-layer.js').DrawnBox | null) => void} drawBox
  * @property {(change: ViewChange) => void} change
  * @property {() => void} whole */
 
 const dragPx = 5;
 const leastBoxPx = 12;
+const handlePx = 14;
+const deltaInLines = 1;
 
 /**
  * The panel at a height; the nearest one beside them.
@@ -24,6 +28,20 @@ const leastBoxPx = 12;
 export function panelAt(panels, y) {
   const off = (/** @type {ChartPanel} */ panel) => Math.max(panel.top - y, y - panel.bottom, 0);
   return panels.reduce((/** @type {ChartPanel | null} */ best, panel) => (best === null || off(panel) < off(best) ? panel : best), null);
+}
+
+/**
+ * The handle under a place, the nearest where there are several; -1 for none.
+ * @param {ChartPanel[]} panels @param {import('./cursor-layer.js').Handle[]} handles @param {Place} place
+ */
+export function handleUnder(panels, handles, place) {
+  let [best, least] = [-1, handlePx];
+  handles.forEach((handle, index) => {
+    const panel = panels.find(({ key }) => key === handle.panel);
+    const off = panel === undefined ? Infinity : Math.hypot(panel.x(handle.frequencyHz) - place.x, panel.y(handle.value) - place.y);
+    if (off < least) [best, least] = [index, off];
+  });
+  return best;
 }
 
 /** @param {ChartPanel} panel @param {number} x */
@@ -38,7 +56,7 @@ const placeY = (panel, y) => (panel.bottom - y) / (panel.bottom - panel.top);
 export function attachGestures(surface, host) {
   /** @type {Map<number, Place>} */
   const pointers = new Map();
-  /** @type {{kind: 'box' | 'move' | 'scrub', from: Place, far: boolean} | null} */
+  /** @type {{kind: 'box' | 'move' | 'scrub' | 'handle', from: Place, far: boolean, handle: number} | null} */
   let drag = null;
 
   const placeOfEvent = (/** @type {MouseEvent} */ event) => {
@@ -52,8 +70,9 @@ export function attachGestures(surface, host) {
     pointers.set(event.pointerId, place);
     surface.setPointerCapture(event.pointerId);
     if (event.button === 1) event.preventDefault();
-    const kind = event.pointerType === 'touch' ? 'scrub' : event.shiftKey || event.button === 1 ? 'move' : 'box';
-    drag = pointers.size > 1 ? null : { kind, from: place, far: false };
+    const handle = event.button === 0 && !event.shiftKey ? host.grab(place) : -1;
+    const kind = handle >= 0 ? 'handle' : event.pointerType === 'touch' ? 'scrub' : event.shiftKey || event.button === 1 ? 'move' : 'box';
+    drag = pointers.size > 1 ? null : { kind, from: place, far: false, handle };
     if (pointers.size > 1) host.drawBox(null);
   };
 
@@ -74,7 +93,8 @@ export function attachGestures(surface, host) {
     const place = placeOfEvent(event);
     if (!pointers.delete(event.pointerId)) return;
     if (drag !== null && event.type === 'pointerup') {
-      if (drag.kind === 'box' && drag.far) zoomIntoBox(drag.from, place);
+      if (drag.kind === 'handle' && drag.far) host.dragHandle(drag.handle, place, true);
+      else if (drag.kind === 'box' && drag.far) zoomIntoBox(drag.from, place);
       else if (!drag.far) host.pick(place);
     }
 
@@ -86,10 +106,12 @@ export function attachGestures(surface, host) {
     if (!pointers.has(event.pointerId)) host.point(null);
   };
 
-  /** @param {{kind: string, from: Place, far: boolean}} now @param {Place} before @param {Place} place */
+  /** @param {{kind: string, from: Place, far: boolean, handle: number}} now @param {Place} before @param {Place} place */
   function dragged(now, before, place) {
     now.far ||= Math.hypot(place.x - now.from.x, place.y - now.from.y) > dragPx;
-    if (now.kind === 'scrub') host.point(place);
+    if (now.kind === 'handle') {
+      if (now.far) host.dragHandle(now.handle, place, false);
+    } else if (now.kind === 'scrub') host.point(place);
     else if (now.kind === 'box') host.drawBox(now.far ? boxOf(now.from, place) : null);
     else moveBy(before, place);
   }
@@ -152,7 +174,7 @@ export function attachGestures(surface, host) {
     const panel = panelAt(host.panels(), place.y);
     if (panel === null) return;
     event.preventDefault();
-    const lines = event.deltaMode === WheelEvent.DOM_DELTA_LINE ? 16 : 1;
+    const lines = event.deltaMode === deltaInLines ? 16 : 1;
     const amount = Math.max(-100, Math.min(100, (event.deltaY || event.deltaX) * lines));
     const factor = Math.exp(amount * (event.ctrlKey ? 0.01 : 0.0025));
     if (event.shiftKey || event.deltaY === 0) host.change({ frequency: moved(logAxis, panel.frequency, amount * 0.002) });

@@ -1,7 +1,7 @@
 // What is painted in a panel beside the lines of runs: forbidden areas, the fan of percentiles, limits and names.
 
 import { valueAt } from './curve.js';
-import { forbiddenAreas, limitAt, limitLines, namePlace } from './limit-area.js';
+import { forbiddenAreas, limitLines, namePlace } from './limit-area.js';
 
 /** @typedef {import('./plot-chart.js').ChartPanel} Panel */
 /** @typedef {import('./trace-set.js').Limit} Limit */
@@ -113,24 +113,27 @@ export function strokeCurve(context, x, values, panel) {
 }
 
 /**
- * A curve's name beside its line, where it is in view and no limit runs through the name.
+ * A curve's name beside its line, where it is in view and, if there is such a place, no other line runs through the name.
  * @param {Context} context @param {Panel} panel @param {{frequencyHz: Float64Array, values: Float64Array, name: string, colour: string}} curve
- * @param {Limit[]} limits @param {PlotTheme} theme
+ * @param {((frequencyHz: number) => number)[]} others values of the other lines @param {PlotTheme} theme
  */
-export function paintName(context, panel, { frequencyHz, values, name, colour }, limits, theme) {
+export function paintName(context, panel, { frequencyHz, values, name, colour }, others, theme) {
   context.font = `600 ${theme.textPx}px ${theme.face}`;
   const half = context.measureText(name).width / 2 + 6;
   const tall = theme.textPx / 2 + 2;
-  const isFree = (/** @type {number} */ x, /** @type {number} */ y) => y - tall > panel.top && y + tall < panel.bottom
-    && limits.every((limit) => [x - half, x, x + half].every((at) => !(Math.abs(panel.y(limitAt(limit, panel.frequencyAt(at))) - y) < tall)));
-  for (const share of [0.06, 0.3, 0.5, 0.7, 0.94]) {
+  const curve = (/** @type {number} */ x) => panel.y(valueAt(frequencyHz, values, panel.frequencyAt(x)));
+  const lines = others.map((valueOf) => (/** @type {number} */ x) => panel.y(valueOf(panel.frequencyAt(x))));
+  const inside = (/** @type {number} */ y) => y - tall > panel.top && y + tall < panel.bottom;
+  const clear = (/** @type {number} */ x, /** @type {number} */ y, /** @type {((x: number) => number)[]} */ of) => inside(y)
+    && of.every((line) => [x - half, x, x + half].every((at) => !(Math.abs(line(at) - y) < tall)));
+  const places = [];
+  for (let share = 0.05; share < 1; share += 0.09) {
     const x = Math.min(panel.right - half, Math.max(panel.left + half, panel.left + share * (panel.right - panel.left)));
-    const y = panel.y(valueAt(frequencyHz, values, panel.frequencyAt(x)));
-    if (!(y > panel.top && y < panel.bottom)) continue;
-    for (const off of [-theme.textPx, theme.textPx]) {
-      if (isFree(x, y + off)) return write(context, name, x, y + off, colour, theme.ground);
-    }
+    for (const off of [-1, 1, -2.2, 2.2]) places.push({ x, y: curve(x) + off * theme.textPx });
   }
+
+  const place = places.find(({ x, y }) => clear(x, y, [curve, ...lines])) ?? places.find(({ x, y }) => clear(x, y, [curve])) ?? places.find(({ y }) => inside(y));
+  if (place) write(context, name, place.x, place.y, colour, theme.ground);
 }
 
 /** @param {Context} context @param {string} text @param {number} x @param {number} y @param {string} colour @param {string} ground */

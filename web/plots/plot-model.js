@@ -11,7 +11,8 @@ import { spanOf } from './value-span.js';
 /** @typedef {import('./trace-set.js').Overlay} Overlay */
 /** @typedef {'upper' | 'lower'} PanelKey */
 /** @typedef {{key: PanelKey, set: TraceSet, span: Span, groups: Uint8Array}} PanelModel */
-/** @typedef {{panels: PanelModel[], frequency: Span, named: import('./named-runs.js').NamedRun[], notes: string[], count: number, background: number, odd: number}} PlotModel */
+/** `notes` tell what could not come along to the basis.
+ * @typedef {{panels: PanelModel[], frequency: Span, named: import('./named-runs.js').NamedRun[], notes: string[], count: number, background: number, odd: number}} PlotModel */
 /** @typedef {{upper: Overlay | null, lower: Overlay | null, basis: import('./bases.js').Basis, levelHz: number, chosen: string[] | null}} PlotQuestion */
 
 /**

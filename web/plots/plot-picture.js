@@ -3,6 +3,7 @@
 
 import { paintCursorLayer } from './cursor-layer.js';
 import { valueAt } from './curve.js';
+import { limitAt } from './limit-area.js';
 import { PlotChart } from './plot-chart.js';
 import { clipped, paintFan, paintForbidden, paintLimits, paintName } from './plot-layers.js';
 import { rgbOf, themeOf, watchTheme } from './plot-theme.js';
@@ -14,7 +15,7 @@ import { sharedPainter } from './run-painter.js';
 /** @typedef {import('./plot-model.js').PlotModel} PlotModel */
 /** @typedef {import('./plot-model.js').PanelModel} PanelModel */
 /** @typedef {import('./spans.js').Span} Span */
-/** @typedef {{model: PlotModel, basisHz: number, frequency: Span, values: {[key: string]: Span}, hidden: ReadonlySet<string>, atHz: number, cursorText: string, raised: string | null}} PictureContent */
+/** @typedef {{model: PlotModel, basisHz: number, frequency: Span, values: {[key: string]: Span}, hidden: ReadonlySet<string>, atHz: number, cursorText: string, raised: string | null, handles: import('./cursor-layer.js').Handle[]}} PictureContent */
 
 export class PlotPicture {
   /** @type {PlotChart} */
@@ -40,14 +41,14 @@ export class PlotPicture {
     this.over = over;
     this.onPercentiles = onPercentiles;
     this.theme = themeOf(element);
-    this.colours = [rgbOf(this.theme.run), rgbOf(this.theme.series[0])];
+    this.colours = [rgbOf(this.theme.run), rgbOf(this.theme.series[1])];
     this.#chart = new PlotChart(canvas, {
       under: (context, panels) => this.#paint(panels, (panel, model, content) => this.#paintUnder(context, panel, model, content)),
       over: (context, panels) => this.#paint(panels, (panel, model, content) => this.#paintOver(context, panel, model, content)),
     }, () => this.#paintCursorSoon());
     this.#unwatch = watchTheme(() => {
       this.theme = themeOf(element);
-      this.colours = [rgbOf(this.theme.run), rgbOf(this.theme.series[0])];
+      this.colours = [rgbOf(this.theme.run), rgbOf(this.theme.series[1])];
       this.#drawn = [];
       if (this.#content) this.show(this.#content);
     });
@@ -153,6 +154,7 @@ export class PlotPicture {
     context.save();
     if (!hidden.has('limits')) clipped(context, panel, () => paintForbidden(context, panel, set.limits, this.theme, ratio));
     if (!hidden.has('background')) this.#showRuns(context, panel, layer, ratio);
+    if (layer.isSharp) layer.wantPercentiles();
     const { percentiles } = layer;
     if (percentiles && !hidden.has('percentiles')) clipped(context, panel, () => paintFan(context, panel, set.frequencyHz, percentiles, this.theme));
     context.restore();
@@ -175,13 +177,19 @@ export class PlotPicture {
   }
 
   /** @param {CanvasRenderingContext2D} context @param {ChartPanel} panel @param {PanelModel} model @param {PictureContent} content */
-  #paintOver(context, panel, { key, set }, { hidden }) {
-    const golden = set.golden;
+  #paintOver(context, panel, { key, set }, { hidden, model: { named } }) {
+    const { golden, frequencyHz } = set;
+    const limits = hidden.has('limits') ? [] : set.limits;
     context.save();
     clipped(context, panel, () => {
-      if (!hidden.has('limits')) paintLimits(context, panel, set.limits, this.theme);
-      if (golden && key === 'upper' && !hidden.has('golden'))
-        paintName(context, panel, { frequencyHz: set.frequencyHz, values: golden.values, name: `golden ${golden.serial}`, colour: this.theme.golden }, hidden.has('limits') ? [] : set.limits, this.theme);
+      paintLimits(context, panel, limits, this.theme);
+      if (!golden || key !== 'upper' || hidden.has('golden')) return;
+      const namedIds = named.map(({ run }) => run.runId).filter((runId) => !hidden.has(runId));
+      const others = [
+        ...limits.map((limit) => (/** @type {number} */ atHz) => limitAt(limit, atHz)),
+        ...set.runs.filter(({ runId }) => namedIds.includes(runId)).map(({ values }) => (/** @type {number} */ atHz) => valueAt(frequencyHz, values, atHz)),
+      ];
+      paintName(context, panel, { frequencyHz, values: golden.values, name: `golden ${golden.serial}`, colour: this.theme.golden }, others, this.theme);
     });
     context.strokeStyle = this.theme.axis;
     context.lineWidth = 1;
@@ -208,7 +216,7 @@ export class PlotPicture {
     this.#frame = 0;
     const content = this.#content;
     if (content === null) return;
-    const { model, atHz, cursorText, raised, hidden } = content;
+    const { model, atHz, cursorText, raised, hidden, handles } = content;
     const panels = this.panels;
     const raisedLines = [];
     const dots = [];
@@ -226,6 +234,6 @@ export class PlotPicture {
       if (set.golden && !hidden.has('golden')) dots.push({ panel, value: valueAt(set.frequencyHz, set.golden.values, atHz), colour: this.theme.golden });
     }
 
-    paintCursorLayer(this.over, this.#chart.size, this.#chart.pixelRatio, { panels, atHz, cursorText, raised: raisedLines, dots, box: this.#box, theme: this.theme });
+    paintCursorLayer(this.over, this.#chart.size, this.#chart.pixelRatio, { panels, atHz, cursorText, raised: raisedLines, dots, handles, box: this.#box, theme: this.theme });
   }
 }

@@ -79,10 +79,28 @@ function swatch(kind, dash) {
 }
 
 /**
+ * What opens when it is asked for: the table under the cursor, and the keys.
+ * @param {ResponsePlot} plot @param {PlotModel} model @param {{id: string, atHz: number, open: boolean}} state
+ */
+export function moreOf(plot, model, { id, atHz, open }) {
+  return html`
+    <div class="plot-more">
+      <details class="plot-values" @toggle=${(/** @type {Event} */ event) => { plot.open = /** @type {HTMLDetailsElement} */ (event.target).open; }}>
+        <summary>All values at ${frequency(atHz)}</summary>
+        ${open ? tableOf(model, atHz, plot.raisedRunId) : nothing}
+      </details>
+      <details class="plot-help">
+        <summary>Keys and pointer</summary>
+        <p id="${id}-keys">With the plot in focus: left and right move the cursor, up and down walk through the runs, Enter picks one. Plus and minus zoom, Shift with an arrow moves the view, 0 shows the whole sweep. With a pointer: drag a box to zoom, Shift and drag to move, turn the wheel to zoom once the plot has the focus, double-click for the whole sweep. Two fingers zoom and move.</p>
+      </details>
+    </div>`;
+}
+
+/**
  * The table of all that stands under the cursor.
  * @param {PlotModel} model @param {number} atHz @param {string | null} raised
  */
-export function tableOf(model, atHz, raised) {
+function tableOf(model, atHz, raised) {
   const sets = model.panels.map(({ set }) => set);
   const all = model.count <= mostRows ? [...new Set([...model.named.map(({ run }) => run.runId), ...sets.flatMap((set) => set.runs.map((run) => run.runId))])]
     : [...new Set([...model.named.map(({ run }) => run.runId), ...(raised === null ? [] : [raised])])];

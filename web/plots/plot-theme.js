@@ -9,7 +9,7 @@ const usual = new Map([
   ['--plot-run', '#8a979b'], ['--plot-golden', '#1b2224'], ['--plot-forbidden', '#d55e00'], ['--plot-cursor', '#0a5a74'],
   ['--ink', '#1b2224'], ['--face', 'sans-serif'],
 ]);
-const usualSeries = ['#d55e00', '#0072b2', '#b3588e', '#00805d', '#3d3d8f', '#7a6a00'];
+const usualSeries = ['#0072b2', '#b3588e', '#00805d', '#3d3d8f', '#7a6a00'];
 
 /** @param {Element} element @returns {PlotTheme} */
 export function themeOf(element) {

@@ -1,5 +1,7 @@
 // What part of a plot is in view, and the text of it that stands in an address. Pure.
 
+import { logAxis, sameSpan, straightAxis, within, zoomed } from './spans.js';
+
 /** @typedef {import('./spans.js').Span} Span */
 /** Spans in view; null where all is shown. @typedef {{frequency: Span | null, upper: Span | null, lower: Span | null}} PlotView */
 
@@ -10,6 +12,41 @@ const digits = 5;
 
 /** @param {PlotView} view */
 export const isWhole = (view) => view.frequency === null && view.upper === null && view.lower === null;
+
+const leastShare = 1e-3;
+const farthest = 3;
+
+/**
+ * The frequencies in view.
+ * @param {PlotView} view @param {Span} whole
+ */
+export function frequencyIn(view, whole) {
+  return view.frequency === null ? whole : within(logAxis, view.frequency, whole, leastShare);
+}
+
+/**
+ * The view with other spans in it, kept to what there is to see: the sweep's frequencies, and values not far beyond the curves'.
+ * @param {PlotView} view
+ * @param {{frequency: Span, panels: {key: 'upper' | 'lower', span: Span}[]}} whole
+ * @param {import('./plot-gestures.js').ViewChange} change
+ * @returns {PlotView}
+ */
+export function changedView(view, whole, { frequency, values = [] }) {
+  const changed = { ...view };
+  if (frequency) {
+    const kept = within(logAxis, frequency, whole.frequency, leastShare);
+    changed.frequency = sameSpan(kept, whole.frequency) ? null : kept;
+  }
+
+  for (const { key, span } of values) {
+    const panel = whole.panels.find((one) => one.key === key);
+    if (panel === undefined) continue;
+    const kept = within(straightAxis, span, zoomed(straightAxis, panel.span, farthest), leastShare);
+    changed[key] = sameSpan(kept, panel.span) ? null : kept;
+  }
+
+  return changed;
+}
 
 /**
  * A view as text: "20~2000,-6~3," for a span of frequencies and one of the upper panel's values. Empty for the whole view.

@@ -8,7 +8,7 @@ internal static class LimitEvaluator
     // Grids are rounded when they are written; a gap that exceeds the stated one by this share is the stated one.
     private const double GapTolerance = 1e-6;
 
-    internal static CriterionResult Evaluate(CurveLimit limit, Sweep run, Sweep? golden, GoldenRatio? ratio)
+    internal static CriterionResult Evaluate(CurveLimit limit, Sweep run, Sweep? golden, GoldenRatio? ratio, double phaseTurnsDeg)
     {
         var limited = LimitedCurve.Of(limit, run, golden, ratio);
         if (limited.Reason is not null)
@@ -21,10 +21,13 @@ internal static class LimitEvaluator
         if (fromHz > toHz)
             return Undecided(limit, TooShort(limit, curve, true, true));
 
-        double endRatio = limit.EndRatio ?? 1;
+        double endRatio = (limit.EndRatio ?? 1) * (1 + Sweep.EndTolerance);
         bool startMissing = curve.FirstHz > firstHz * endRatio;
         bool endMissing = lastHz > curve.LastHz * endRatio;
-        double shift = limited.Offset + Turns(limit, curve, fromHz, toHz);
+
+        // A ratio is nearest to the golden run already.
+        bool turns = limit.Quantity == CurveQuantity.PhaseDeg && limit.Basis != LimitBasis.Golden;
+        double shift = limited.Offset + (turns ? phaseTurnsDeg : 0);
         var search = new MarginSearch(curve, limit, shift);
         search.Between(fromHz, toHz);
         if (curve.FirstHz > firstHz && !startMissing)
@@ -50,7 +53,7 @@ internal static class LimitEvaluator
         string unit = UnitOf(limit.Quantity);
         if (search.ZeroHz is { } zeroHz && limit.Side == LimitSide.Lower)
             return new(limit.Name, Outcome.Fail, null, unit, zeroHz, new Absence(AbsenceCode.ZeroGain, $"The gain at or beside {Wording.Hz(zeroHz)} is exactly zero, under every lower limit."), notes);
-        double margin = MaskEvaluator.Snap(search.Least, limit.Scale);
+        double margin = MaskEvaluator.Snap(search.Least, limit.Scale ?? MaskEvaluator.UsualScale(unit, limit.Corners.Max(c => Math.Abs(c.Value))));
         if (margin < 0)
             return new(limit.Name, Outcome.Fail, margin, unit, search.LeastHz, incomplete, notes);
         if (incomplete is not null)
@@ -62,18 +65,6 @@ internal static class LimitEvaluator
 
     private static CriterionResult Undecided(CurveLimit limit, Absence reason, Absence[]? notes = null)
         => new(limit.Name, Outcome.Inconclusive, null, UnitOf(limit.Quantity), null, reason, notes);
-
-    /// <summary>Whole turns, in degrees, that the curve stands above the branch nearest to the limit at their lowest common frequency. A ratio is already nearest to the golden run.</summary>
-    private static double Turns(CurveLimit limit, Curve curve, double fromHz, double toHz)
-    {
-        if (limit.Quantity != CurveQuantity.PhaseDeg || limit.Basis == LimitBasis.Golden)
-            return 0;
-        double commonHz = fromHz;
-        double phaseDeg = curve.ValueAt(fromHz);
-        for (int i = curve.PieceOf(fromHz) + 1; double.IsNaN(phaseDeg) && i < curve.Count && curve.FrequencyHz[i] <= toHz; i++)
-            (commonHz, phaseDeg) = (curve.FrequencyHz[i], curve.Values[i]);
-        return double.IsNaN(phaseDeg) ? 0 : 360 * Math.Round((phaseDeg - LimitCurve.ValueAt(limit, commonHz)) / 360);
-    }
 
     private static Absence TooShort(CurveLimit limit, Curve curve, bool startMissing, bool endMissing)
     {

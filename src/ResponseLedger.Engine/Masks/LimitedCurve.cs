@@ -58,7 +58,7 @@ internal readonly ref struct LimitedCurve
         {
             CurveQuantity.GainDb => new(new Curve(ratio.FrequencyHz, ratio.DifferenceDb), 0, default),
             CurveQuantity.PhaseDeg => new(new Curve(ratio.FrequencyHz, ratio.DifferenceDeg), 0, ratio.SuspectSteps),
-            _ => new(new Curve(ratio.FrequencyHz, ratio.DelayDifferenceSeconds), 0, ratio.SuspectSteps),
+            _ => new(new Curve(ratio.FrequencyHz, ratio.DelayDifferenceSeconds), 0, ratio.DelaySuspectSteps),
         };
     }
 }

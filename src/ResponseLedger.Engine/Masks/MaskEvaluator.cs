@@ -6,8 +6,14 @@ namespace ResponseLedger.Engine.Masks;
 /// <summary>Judges a run against a mask by simple acceptance: a margin of 0 or more passes.</summary>
 public static class MaskEvaluator
 {
-    /// <summary>A margin under this size (times the criterion's scale where that is under 1) is rounding and counts as 0.</summary>
+    /// <summary>
+    /// A margin under this size is rounding and counts as 0. It is in the criterion's unit, times its scale where that is under 1. A delay
+    /// without a scale takes the largest bound that is stated for it in the scale's place: 1e-9 s is no rounding for one.
+    /// </summary>
     public const double ZeroMargin = 1e-9;
+
+    // A bound of zero has no size of its own.
+    private const double SmallDelaySeconds = 1e-6;
 
     /// <summary>What is wrong with a mask before any run is seen, as (path, sentence) pairs such as <c>limits[0].corners[1].value</c>; empty when it can be released.</summary>
     public static IReadOnlyList<MaskProblem> ProblemsOf(Mask mask) => MaskCheck.ProblemsOf(mask);
@@ -26,8 +32,9 @@ public static class MaskEvaluator
         int next = 0;
         bool needsRatio = golden is not null && mask.Limits.Any(l => l.Basis == LimitBasis.Golden);
         var ratio = needsRatio ? GoldenRatio.Of(run, golden!) : null;
+        double phaseTurnsDeg = PhaseTurns.Of(mask.Limits, run);
         foreach (var limit in mask.Limits)
-            criteria[next++] = LimitEvaluator.Evaluate(limit, run, golden, ratio);
+            criteria[next++] = LimitEvaluator.Evaluate(limit, run, golden, ratio, phaseTurnsDeg);
 
         var measured = new Dictionary<string, MeasureResult>(StringComparer.Ordinal);
         var measures = new List<MeasureResult>();
@@ -51,6 +58,9 @@ public static class MaskEvaluator
     /// <summary>A margin with rounding taken off.</summary>
     internal static double Snap(double margin, double? scale)
         => Math.Abs(margin) < ZeroMargin * Math.Min(1, scale ?? 1) ? 0 : margin;
+
+    /// <summary>What stands in for a scale that is not stated, where margins are rounded to 0: for seconds the size of the bound, else 1.</summary>
+    internal static double UsualScale(string unit, double largestBound) => unit != "s" ? 1 : largestBound > 0 ? largestBound : SmallDelaySeconds;
 
     /// <summary>The worst outcome, then the least margin over scale; of equals the first.</summary>
     private static int? WorstOf(Mask mask, CriterionResult[] criteria)

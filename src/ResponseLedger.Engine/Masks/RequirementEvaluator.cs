@@ -37,12 +37,14 @@ internal static class RequirementEvaluator
                 (least, leastHz) = (margin, frequencyHz);
         }
 
-        least = MaskEvaluator.Snap(least, requirement.Scale);
+        least = MaskEvaluator.Snap(least, requirement.Scale ?? MaskEvaluator.UsualScale(output.Unit, Math.Max(Math.Abs(requirement.Min ?? 0), Math.Abs(requirement.Max ?? 0))));
         if (least < 0)
             return new(requirement.Name, Outcome.Fail, least, output.Unit, leastHz, absent ? result.Reason : null, notes);
         if (Undecided(requirement.Output, result, crossovers, absent, hasPhase) is { } reason)
         {
-            bool accepted = reason.Code == AbsenceCode.NoCrossover && requirement.AcceptNoCrossover;
+            // A phase crossover above 0 dB is one: a loop that may be beyond the critical point is not accepted for want of others.
+            bool none = requirement.Output != "gainMarginDb" || result.PhaseCrossovers.Count == 0;
+            bool accepted = none && reason.Code == AbsenceCode.NoCrossover && requirement.AcceptNoCrossover;
             return new(requirement.Name, accepted ? Outcome.Pass : Outcome.Inconclusive, null, output.Unit, null, reason, notes);
         }
 
@@ -81,11 +83,14 @@ internal static class RequirementEvaluator
         string what = output switch
         {
             "phaseMarginDeg" or "gainCrossoverHz" => "no gain crossover",
-            "gainMarginDb" => "no phase crossover at which the gain may rise",
-            "gainReductionDb" => "no phase crossover at which the gain may fall",
+            "gainMarginDb" => "no phase crossover below 0 dB, at which the gain may rise",
+            "gainReductionDb" => "no phase crossover above 0 dB, at which the gain may fall",
             _ => "no phase crossover",
         };
-        return new Absence(AbsenceCode.NoCrossover, $"The sweep holds {what}; sweep further, or let the requirement accept it.");
+        string remedy = result.PhaseCrossovers.Count > 0 && output == "gainMarginDb"
+            ? "those that it holds lie above 0 dB, and the run's loop margins list them"
+            : "sweep further, or let the requirement accept it";
+        return new Absence(AbsenceCode.NoCrossover, $"The sweep holds {what}; {remedy}.");
     }
 
     /// <summary>Where a scalar belongs: beside it in the result, or the frequency that was asked for.</summary>

@@ -16,7 +16,7 @@ internal sealed class AttenuationMeasure : Measure
     {
         double fromHz = Parameter(call, "fromHz");
         double toHz = Parameter(call, "toHz");
-        if (OutsideSweep(run, fromHz, toHz) is { } outside)
+        if (OutsideSweep(run, ref fromHz, ref toHz) is { } outside)
             return Absent(call, outside);
         var (reference, reason) = ReferenceLevels.Resolve(run, call.Reference!);
         if (reference is null)

@@ -26,7 +26,7 @@ internal sealed class DelayMeasure : Measure
         double frequencyHz = Parameter(call, "frequencyHz");
         if (PhaseAbsent(run) is { } noPhase)
             return Absent(call, noPhase);
-        if (OutsideSweep(run, frequencyHz, frequencyHz) is { } outside)
+        if (OutsideSweep(run, ref frequencyHz) is { } outside)
             return Absent(call, outside);
         return Optional(call, "apertureRatio") is { } ratio
             ? OverAperture(run, call, frequencyHz, ratio)
@@ -51,7 +51,7 @@ internal sealed class DelayMeasure : Measure
         double root = Math.Sqrt(ratio);
         double lowHz = frequencyHz / root;
         double highHz = frequencyHz * root;
-        if (OutsideSweep(run, lowHz, highHz) is { } outside)
+        if (OutsideSweep(run, ref lowHz, ref highHz) is { } outside)
             return Absent(call, outside with { Sentence = "The aperture leaves the sweep. " + outside.Sentence });
         var part = run.PhaseCurve.Part(lowHz, highHz);
         if (!part.IsFinite)

@@ -6,13 +6,17 @@ namespace ResponseLedger.Engine.Measures;
 /// The least distance of a loop gain from the critical point, |1 + L| or |1 - L|. On a piece the level and the phase are straight
 /// in t = 0..1, so with psi the phase from the critical one, L = g e^(j psi) up to sign, g = e^(q + p t), psi = s + r t and
 /// d^2 = 1 + g^2 - 2 g cos psi. Its stationary points are the roots of F(t) = p (g - cos psi) + r sin psi. Each is bracketed: an
-/// interval is split until F is proved free of roots or monotone on it by the bounds |F'| and |F''|, and a monotone root is bisected
-/// to 1e-14 of the piece, which leaves d exact to about 1e-15 since d is stationary there.
+/// interval is split until F is proved free of roots or monotone on it by the bounds |F'| and |F''|, with the largest gain of that
+/// interval, and a monotone root is bisected to 1e-14 of the piece, which leaves d exact to about 1e-15 since d is stationary there. An
+/// interval that cannot come nearer than the least so far is left: d is at least |1 - g|, and changes by at most g times the way.
 /// </summary>
 internal static class LeastDistance
 {
     // An interval of this share of a piece that is still undecided holds a double root at most; its middle is taken as it is.
     private const double SmallestInterval = 1e-9;
+
+    // ln g from which d is g itself to a double, and e^(ln g) soon exceeds one.
+    private const double FarOut = 40;
 
     // On a piece whose way in the plane is shorter than this the ends tell the distance.
     private const double NegligibleWay = 1e-14;
@@ -55,6 +59,8 @@ internal static class LeastDistance
     private static double Distance(double logGain, double psi)
     {
         double g = Math.Exp(logGain);
+        if (logGain > FarOut)
+            return g;
         // 1 - g cos psi without cancellation near the critical point: -(expm1(logGain)) + 2 g sin^2(psi/2).
         double half = Math.Sin(psi / 2);
         double real = 2 * g * half * half - ExpLessOne(logGain);
@@ -77,20 +83,29 @@ internal static class LeastDistance
         private readonly double s = psiStart;
         private readonly double r = psiEnd - psiStart;
 
-        internal bool IsFinite => double.IsFinite(p) && double.IsFinite(r) && double.IsFinite(MaxGain);
+        internal bool IsFinite => double.IsFinite(p) && double.IsFinite(r);
 
-        private double MaxGain => Math.Exp(Math.Max(q, q + p));
-
-        /// <summary>d changes by at most g times the length of the way, so the ends bound the middle.</summary>
-        internal double LowerBound()
-            => (At(0) + At(1) - MaxGain * Math.Sqrt(p * p + r * r)) / 2;
+        /// <summary>A distance that the piece cannot come under.</summary>
+        internal double LowerBound() => LowerBound(0, 1);
 
         internal (double Distance, double T) Least()
         {
             var best = At(0) <= At(1) ? (At(0), 0.0) : (At(1), 1.0);
-            if (MaxGain * Math.Sqrt(p * p + r * r) > NegligibleWay)
-                Search(0, 1, ref best);
+            Search(0, 1, ref best);
             return best;
+        }
+
+        private double Way(double share) => share * Math.Sqrt(p * p + r * r);
+
+        private double MaxGain(double from, double to) => Math.Exp(Math.Max(q + p * from, q + p * to));
+
+        private double LowerBound(double from, double to)
+        {
+            double largest = MaxGain(from, to);
+            double smallest = Math.Exp(Math.Min(q + p * from, q + p * to));
+            double ofGain = smallest > 1 ? smallest - 1 : largest < 1 ? 1 - largest : 0;
+            double ofWay = (At(from) + At(to) - largest * Way(to - from)) / 2;
+            return double.IsNaN(ofWay) ? ofGain : Math.Max(ofGain, ofWay);
         }
 
         private double At(double t) => Distance(q + p * t, s + r * t);
@@ -109,13 +124,16 @@ internal static class LeastDistance
 
         private void Search(double from, double to, ref (double Distance, double T) best)
         {
+            double largest = MaxGain(from, to);
+            if (largest * Way(to - from) <= NegligibleWay || LowerBound(from, to) >= best.Distance)
+                return;
             double middle = (from + to) / 2;
             double half = (to - from) / 2;
             var (p1, r1) = (Math.Abs(p), Math.Abs(r));
-            double firstBound = p * p * MaxGain + p1 * r1 + r * r;
+            double firstBound = p * p * largest + p1 * r1 + r * r;
             if (Math.Abs(F(middle)) > firstBound * half)
                 return;
-            double secondBound = p1 * p1 * p1 * MaxGain + p1 * r * r + r1 * r1 * r1;
+            double secondBound = p1 * p1 * p1 * largest + p1 * r * r + r1 * r1 * r1;
             if (Math.Abs(FPrime(middle)) > secondBound * half)
             {
                 // F is monotone here: one root at most, and it is a minimum where F rises through it.

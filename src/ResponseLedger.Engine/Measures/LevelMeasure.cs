@@ -14,7 +14,7 @@ internal sealed class LevelMeasure : Measure
     internal override MeasureResult Evaluate(Sweep run, MeasureCall call, DeviceTraits device)
     {
         double frequencyHz = Parameter(call, "frequencyHz");
-        if (OutsideSweep(run, frequencyHz, frequencyHz) is { } outside)
+        if (OutsideSweep(run, ref frequencyHz) is { } outside)
             return Absent(call, outside);
         return run.GainDbAt(frequencyHz) is { } level
             ? Found(call, [level])

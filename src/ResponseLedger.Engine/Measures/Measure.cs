@@ -40,9 +40,18 @@ internal abstract class Measure
         return Found(call, values, reason, notes);
     }
 
-    protected static Absence? OutsideSweep(Sweep run, double fromHz, double toHz)
+    /// <summary>The reason where a frequency lies outside the sweep; one that misses an end by rounding is set to it.</summary>
+    protected static Absence? OutsideSweep(Sweep run, ref double frequencyHz)
+    {
+        double same = frequencyHz;
+        return OutsideSweep(run, ref frequencyHz, ref same);
+    }
+
+    /// <summary>The reason where a band leaves the sweep; an edge that misses an end by rounding is set to it.</summary>
+    protected static Absence? OutsideSweep(Sweep run, ref double fromHz, ref double toHz)
     {
         var f = run.FrequencyHz;
+        (fromHz, toHz) = (run.AtEnds(fromHz), run.AtEnds(toHz));
         if (fromHz >= f[0] && toHz <= f[^1])
             return null;
         string asked = fromHz == toHz ? Wording.Hz(fromHz) : $"{Wording.Hz(fromHz)} to {Wording.Hz(toHz)}";

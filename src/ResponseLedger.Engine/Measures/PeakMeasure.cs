@@ -16,7 +16,7 @@ internal sealed class PeakMeasure : Measure
     {
         double fromHz = Optional(call, "fromHz") ?? run.FrequencyHz[0];
         double toHz = Optional(call, "toHz") ?? run.FrequencyHz[^1];
-        if (OutsideSweep(run, fromHz, toHz) is { } outside)
+        if (OutsideSweep(run, ref fromHz, ref toHz) is { } outside)
             return Absent(call, outside);
         if (toHz <= fromHz)
             return Absent(call, new Absence(AbsenceCode.OutsideSweep, $"The band from {Wording.Hz(fromHz)} to {Wording.Hz(toHz)} is empty."));

@@ -17,7 +17,7 @@ internal sealed class PhaseMeasure : Measure
         double frequencyHz = Parameter(call, "frequencyHz");
         if (PhaseAbsent(run) is { } noPhase)
             return Absent(call, noPhase);
-        if (OutsideSweep(run, frequencyHz, frequencyHz) is { } outside)
+        if (OutsideSweep(run, ref frequencyHz) is { } outside)
             return Absent(call, outside);
         return run.PhaseDegAt(frequencyHz) is { } phase
             ? Found(call, [phase], null, SuspectNotes(run, run.FrequencyHz[0], frequencyHz))

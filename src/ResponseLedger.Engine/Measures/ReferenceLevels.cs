@@ -51,6 +51,7 @@ public static class ReferenceLevels
 
     private static (double?, Absence?) OfFrequency(Sweep run, double frequencyHz)
     {
+        frequencyHz = run.AtEnds(frequencyHz);
         if (!run.GainCurve.Spans(frequencyHz))
             return (null, Outside(run, Wording.Hz(frequencyHz)));
         return run.GainDbAt(frequencyHz) is { } level
@@ -60,6 +61,7 @@ public static class ReferenceLevels
 
     private static (double?, Absence?) OfBand(Sweep run, double fromHz, double toHz)
     {
+        (fromHz, toHz) = (run.AtEnds(fromHz), run.AtEnds(toHz));
         if (!run.GainCurve.Spans(fromHz) || !run.GainCurve.Spans(toHz))
             return (null, Outside(run, $"{Wording.Hz(fromHz)} to {Wording.Hz(toHz)}"));
         var part = run.GainCurve.Part(fromHz, toHz);

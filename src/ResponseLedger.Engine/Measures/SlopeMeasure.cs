@@ -20,7 +20,7 @@ internal sealed class SlopeMeasure : Measure
     {
         double fromHz = Parameter(call, "fromHz");
         double toHz = Parameter(call, "toHz");
-        if (OutsideSweep(run, fromHz, toHz) is { } outside)
+        if (OutsideSweep(run, ref fromHz, ref toHz) is { } outside)
             return Absent(call, outside);
         var part = run.GainCurve.Part(fromHz, toHz);
         if (!part.IsFinite)

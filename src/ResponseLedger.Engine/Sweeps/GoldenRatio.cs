@@ -3,13 +3,15 @@ namespace ResponseLedger.Engine.Sweeps;
 /// <summary>
 /// H / H_golden at the union of both grids within the span that both cover: difference in dB, degrees and seconds. The phase is
 /// unwrapped as that of a ratio (not as a difference of two unwrapped curves), with the whole turns that bring the run nearest
-/// to the golden run at their lowest common frequency. Between its points the ratio runs straight against log f.
+/// to the golden run at their lowest common frequency. Between its points the ratio runs straight against log f. The delay is the
+/// run's less the golden run's, each by the derivative on its own grid (on the union, points a rounding apart would make noise of it),
+/// with the run on the branch that the ratio gives it: its own turns and the golden run's may be counted differently.
 /// </summary>
 public sealed class GoldenRatio
 {
     private readonly double[] frequencyHz;
     private readonly double[] differenceDb;
-    private readonly Lazy<(double[] Deg, SuspectStep[] SuspectSteps)> phase;
+    private readonly Lazy<RatioPhase> phase;
     private readonly Lazy<double[]> delayDifferenceSeconds;
 
     private GoldenRatio(Sweep run, Sweep golden, double[] unionHz)
@@ -19,14 +21,8 @@ public sealed class GoldenRatio
         LevelDifference(run.GainCurve, golden.GainCurve, unionHz, differenceDb);
         bool hasPhase = run.HasPhase && golden.HasPhase;
         // Most masks compare levels only, so phase and delay wait until they are asked for.
-        phase = new Lazy<(double[], SuspectStep[])>(() =>
-        {
-            if (!hasPhase)
-                return ([], []);
-            double[] deg = Difference(run.PhaseCurve, golden.PhaseCurve, unionHz);
-            return (deg, Unwrapping.Unwrap(unionHz, deg));
-        });
-        delayDifferenceSeconds = new Lazy<double[]>(() => hasPhase ? Difference(run.DelayCurve, golden.DelayCurve, unionHz) : []);
+        phase = new Lazy<RatioPhase>(() => hasPhase ? Unwrapped(run, golden, unionHz) : new RatioPhase([], [], []));
+        delayDifferenceSeconds = new Lazy<double[]>(() => hasPhase ? Difference(OnBranch(run, golden), golden.DelayCurve, unionHz) : []);
     }
 
     /// <summary>Union of both grids within the common span, in Hz, strictly ascending, 2 or more.</summary>
@@ -41,8 +37,11 @@ public sealed class GoldenRatio
     /// <summary>Group delay of the run less that of the golden run in seconds; NaN where either is absent; empty when either run carries no phase.</summary>
     public ReadOnlySpan<double> DelayDifferenceSeconds => delayDifferenceSeconds.Value;
 
-    /// <summary>Steps of the ratio's phase over 120 degrees.</summary>
+    /// <summary>Steps over 120 degrees that the ratio's phase rests on: its own, and where the grids differ those of both runs, between whose points it is read.</summary>
     public ReadOnlySpan<SuspectStep> SuspectSteps => phase.Value.SuspectSteps;
+
+    /// <summary>Steps over 120 degrees that the delay's difference rests on: the ratio's and those of both runs.</summary>
+    public ReadOnlySpan<SuspectStep> DelaySuspectSteps => phase.Value.DelaySuspectSteps;
 
     /// <summary>The ratio of two runs; null when their spans share less than two frequencies of the union.</summary>
     /// <param name="run">The run.</param>
@@ -53,6 +52,42 @@ public sealed class GoldenRatio
         ArgumentNullException.ThrowIfNull(golden);
         double[] union = Union(run.FrequencyHz, golden.FrequencyHz);
         return union.Length < 2 ? null : new GoldenRatio(run, golden, union);
+    }
+
+    private static RatioPhase Unwrapped(Sweep run, Sweep golden, double[] unionHz)
+    {
+        double[] deg = Difference(run.PhaseCurve, golden.PhaseCurve, unionHz);
+        var own = Unwrapping.Unwrap(unionHz, deg);
+        SuspectStep[] all = [.. own.Concat(run.SuspectSteps.ToArray()).Concat(golden.SuspectSteps.ToArray()).OrderBy(step => step.FromHz)];
+        bool sameGrid = run.FrequencyHz.SequenceEqual(golden.FrequencyHz);
+        return new RatioPhase(deg, sameGrid ? own : all, all);
+    }
+
+    /// <summary>The run's delay with its phase, at each point of its own, set to the golden run's plus the ratio's; beyond the common span it goes on by its own steps.</summary>
+    private Curve OnBranch(Sweep run, Sweep golden)
+    {
+        var f = run.FrequencyHz;
+        var ratio = new Curve(frequencyHz, phase.Value.Deg);
+        var own = run.PhaseDeg;
+        var deg = new double[f.Length];
+        int first = f.Length;
+        int last = -1;
+        for (int i = 0; i < f.Length; i++)
+        {
+            if (!ratio.Spans(f[i]))
+                continue;
+            (first, last) = (Math.Min(first, i), i);
+
+            // Whole turns alone are moved, so that no rounding of an interpolation enters the phase.
+            double goldenDeg = golden.PhaseCurve.ValueAt(f[i]);
+            deg[i] = own[i] + 360 * Math.Round((goldenDeg + ratio.ValueAt(f[i]) - own[i]) / 360);
+        }
+
+        for (int i = first - 1; i >= 0 && last >= 0; i--)
+            deg[i] = deg[i + 1] + own[i] - own[i + 1];
+        for (int i = last + 1; i < f.Length && last >= 0; i++)
+            deg[i] = deg[i - 1] + own[i] - own[i - 1];
+        return new Curve(f, last < 0 ? run.DelaySeconds : GroupDelay.AtPoints(f, deg));
     }
 
     private static double[] Union(ReadOnlySpan<double> a, ReadOnlySpan<double> b)
@@ -106,4 +141,6 @@ public sealed class GoldenRatio
             piece++;
         return curve.OnPiece(piece, atHz);
     }
+
+    private sealed record RatioPhase(double[] Deg, SuspectStep[] SuspectSteps, SuspectStep[] DelaySuspectSteps);
 }

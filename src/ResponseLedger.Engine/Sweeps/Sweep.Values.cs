@@ -3,6 +3,15 @@ namespace ResponseLedger.Engine.Sweeps;
 /// <summary>Values of the sweep between its points, in complex form, and sweeps derived from it.</summary>
 public sealed partial class Sweep
 {
+    /// <summary>Share of a frequency by which a grid's ends may miss what was meant: files hold decimal roundings of computed grids.</summary>
+    internal const double EndTolerance = 1e-9;
+
+    /// <summary>A frequency that misses an end of the sweep by rounding alone is that end.</summary>
+    internal double AtEnds(double frequencyHz)
+        => frequencyHz < this.frequencyHz[0] && frequencyHz >= this.frequencyHz[0] * (1 - EndTolerance) ? this.frequencyHz[0]
+            : frequencyHz > this.frequencyHz[^1] && frequencyHz <= this.frequencyHz[^1] * (1 + EndTolerance) ? this.frequencyHz[^1]
+            : frequencyHz;
+
     internal Curve GainCurve => new(FrequencyHz, GainDb);
 
     internal Curve PhaseCurve => new(FrequencyHz, PhaseDeg);

@@ -24,6 +24,10 @@ internal static class BenchesRoutes
             .WithName("getBench").WithSummary("One bench with its settings and the columns that it remembers.")
             .ProducesProblem(StatusCodes.Status404NotFound);
 
+        benches.MapPost("/{id:guid}/serials", SerialsInNames.FindAsync).Validated<NamesAsked>().RequireAuthorization(Policies.Operate)
+            .WithName("findSerials").WithSummary("The serial numbers that uploads from this bench would take these file names for; stores nothing.")
+            .ProducesProblem(StatusCodes.Status404NotFound);
+
         // The handler asks for a manager where anything but the serial pattern is to change.
         benches.MapPatch("/{id:guid}", WriteBenches.ChangeAsync).Validated<BenchChange>().RequireAuthorization(Policies.Engineer)
             .WithName("changeBench").WithSummary("Changes a bench's settings; an engineer may change the serial pattern, a manager all of them.")

@@ -4,7 +4,7 @@ using Microsoft.AspNetCore.Mvc;
 
 namespace ResponseLedger.Server.Http;
 
-/// <summary>The one place where refusals and broken requests become problem details (RFC 9457).</summary>
+/// <summary>The one place where refusals, broken requests and a store that is away become problem details (RFC 9457).</summary>
 internal sealed class RefusalMapping(IProblemDetailsService problems) : IExceptionHandler
 {
     /// <summary>The problem document of a refusal.</summary>
@@ -24,10 +24,13 @@ internal sealed class RefusalMapping(IProblemDetailsService problems) : IExcepti
             BadHttpRequestException { InnerException: JsonException json } when json.Path is { Length: > 1 } path =>
                 Describe(new FieldRefused(path.TrimStart('$', '.'), "This member has another type or form than the one expected here.")),
             BadHttpRequestException bad => Problem(bad.StatusCode, BadRequestCode(bad.StatusCode), BadRequestSentence(bad)),
+            _ when StoreAway.Caused(exception) => Describe(new StoreAway()),
             _ => null,
         };
         if (problem is null)
             return false;
+        if (problem.Status == StatusCodes.Status503ServiceUnavailable)
+            httpContext.Response.Headers.RetryAfter = StoreAway.RetryAfterSeconds;
 
         httpContext.Response.StatusCode = problem.Status ?? StatusCodes.Status500InternalServerError;
         return await problems.TryWriteAsync(new ProblemDetailsContext { HttpContext = httpContext, ProblemDetails = problem });

@@ -14,7 +14,8 @@ internal sealed record OverlayNote(string Code, string Message);
 
 /// <summary>
 /// Places the limits of a mask in an overlay. What a limit is relative to differs from run to run, so a limit relative to a
-/// reference level is drawn by that of the golden run, or without one by the median of the runs' levels, and says so.
+/// reference level is drawn by that of the golden run, or without one by the median of the runs' levels, and says so. Where one
+/// run is drawn alone, its own level is the one that holds.
 /// </summary>
 internal sealed class OverlayLimits
 {
@@ -72,9 +73,13 @@ internal sealed class OverlayLimits
             return null;
         }
 
-        notes.Add(new OverlayNote(
-            "limitDrawnByReference",
-            string.Create(CultureInfo.InvariantCulture, $"The limit \"{limit.Name}\" is relative to each run's own reference level. It is drawn by {(golden is null ? "the median of the runs' levels" : "that of the golden run")}, {level:0.###} dB.")));
+        if (!question.OneRun)
+        {
+            notes.Add(new OverlayNote(
+                "limitDrawnByReference",
+                string.Create(CultureInfo.InvariantCulture, $"The limit \"{limit.Name}\" is relative to each run's own reference level. It is drawn by {(golden is null ? "the median of the runs' levels" : "that of the golden run")}, {level:0.###} dB.")));
+        }
+
         return question.MinusGolden ? Along(limit, golden!, sign: -1, level) : AsItStands(limit, level);
     }
 
@@ -114,7 +119,7 @@ internal sealed class OverlayLimits
 
     private double? ReferenceDb(CurveLimit limit)
     {
-        if (curves.Golden is { } golden)
+        if (!question.OneRun && curves.Golden is { } golden)
             return ReferenceLevels.Resolve(golden.Sweep, limit.Reference!).GainDb;
         var levels = curves.Runs.Select(r => ReferenceLevels.Resolve(r.Sweep, limit.Reference!).GainDb).OfType<double>().Order().ToArray();
         return levels.Length == 0 ? null : (levels[(levels.Length - 1) / 2] + levels[levels.Length / 2]) / 2;

@@ -12,6 +12,9 @@ internal sealed record OverlayQuestion(CurveQuantity Quantity, bool MinusGolden,
 {
     public const int UsualPoints = 800;
 
+    /// <summary>Whether one run is drawn alone, so that limits can stand where they hold for it.</summary>
+    public bool OneRun { get; init; }
+
     private const int FewestPoints = 2;
     private const int MostPoints = 20_000;
 

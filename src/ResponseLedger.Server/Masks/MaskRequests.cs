@@ -1,5 +1,5 @@
+using System.Buffers;
 using System.Text.Json;
-using System.Text.Json.Nodes;
 using System.Text.Json.Serialization;
 using ResponseLedger.Records;
 using ResponseLedger.Records.Masks;
@@ -28,19 +28,30 @@ internal record MaskContent
     /// <summary>Reads the mask, or tells everything that is not of its shape.</summary>
     public MaskDocument? Read(out IReadOnlyList<DocumentProblem> problems)
     {
-        var json = new JsonObject { ["title"] = Title, ["limits"] = Node(Limits), ["requirements"] = Node(Requirements) };
-        foreach (var (name, value) in Others ?? new Dictionary<string, JsonElement>())
-            json[name] = Node(value);
-        return MaskDocument.TryParse(JsonSerializer.SerializeToElement(json), out var document, out problems) ? document : null;
+        // As they were written: the strict reader behind this tells by path what is no text, and a rewriting would stumble over it.
+        var written = new ArrayBufferWriter<byte>();
+        using (var writer = new Utf8JsonWriter(written, new JsonWriterOptions { SkipValidation = true }))
+        {
+            writer.WriteStartObject();
+            writer.WriteString("title", Title);
+            Write(writer, "limits", Limits);
+            Write(writer, "requirements", Requirements);
+            foreach (var (name, value) in Others ?? new Dictionary<string, JsonElement>())
+                Write(writer, name, value);
+            writer.WriteEndObject();
+        }
+
+        return MaskDocument.TryParse(written.WrittenMemory, out var document, out problems) ? document : null;
     }
 
-    private static JsonNode? Node(JsonElement? json) => json?.ValueKind switch
+    private static void Write(Utf8JsonWriter writer, string name, JsonElement? json)
     {
-        JsonValueKind.Object => JsonObject.Create(json.Value),
-        JsonValueKind.Array => JsonArray.Create(json.Value),
-        null or JsonValueKind.Null or JsonValueKind.Undefined => null,
-        _ => JsonValue.Create(json.Value),
-    };
+        writer.WritePropertyName(name);
+        if (json is { ValueKind: not JsonValueKind.Undefined } given)
+            writer.WriteRawValue(given.GetRawText(), skipInputValidation: true);
+        else
+            writer.WriteNullValue();
+    }
 }
 
 /// <summary>A draft to be made, of its own content or as a copy.</summary>

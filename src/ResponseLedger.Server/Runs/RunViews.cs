@@ -20,6 +20,9 @@ internal sealed record RunView(
 {
     /// <summary>Every reassignment, the oldest first; only where one run is shown.</summary>
     public IReadOnlyList<ReassignmentView>? Reassignments { get; init; }
+
+    /// <summary>Where the run was sent for; only where one run is shown.</summary>
+    public FirstPlaceView? FirstPlace { get; init; }
 }
 
 /// <summary>How a run was read.</summary>
@@ -28,6 +31,9 @@ internal sealed record RunReadingView(
 
 /// <summary>A reassignment: where the run went, why, when and by whom.</summary>
 internal sealed record ReassignmentView(string Serial, string? Lot, string Condition, string? Reason, DateTimeOffset At, string? By);
+
+/// <summary>Where a run was sent for, before any reassignment.</summary>
+internal sealed record FirstPlaceView(string Serial, string? Lot, string Condition);
 
 /// <summary>Turns rows into what the API shows.</summary>
 internal sealed class RunViews(ResponseLedgerContext db, JudgingMaterial material)
@@ -39,7 +45,12 @@ internal sealed class RunViews(ResponseLedgerContext db, JudgingMaterial materia
         if (heads.Count == 0)
             return null;
         var view = await OfAsync(heads[0], cancellationToken);
-        return view with { Reassignments = heads[0].Reassignments == 0 ? [] : await ReassignmentsAsync(id, cancellationToken) };
+        var placed = heads[0].Reassignments == 0 ? [] : await PlacesAsync(id, cancellationToken);
+        return view with
+        {
+            Reassignments = [.. placed.Skip(1)],
+            FirstPlace = placed.Count == 0 ? new FirstPlaceView(view.Serial, view.LotNumber, view.Condition) : new FirstPlaceView(placed[0].Serial, placed[0].Lot, placed[0].Condition),
+        };
     }
 
     /// <summary>A run as lists show it.</summary>
@@ -62,9 +73,9 @@ internal sealed class RunViews(ResponseLedgerContext db, JudgingMaterial materia
             worst is null ? null : VerdictDocument.Write(worst));
     }
 
-    private async Task<IReadOnlyList<ReassignmentView>> ReassignmentsAsync(Guid id, CancellationToken cancellationToken)
+    private async Task<IReadOnlyList<ReassignmentView>> PlacesAsync(Guid id, CancellationToken cancellationToken)
         => await (
-            from assignment in db.RunAssignments.Where(a => a.RunId == id && a.Number > 0)
+            from assignment in db.RunAssignments.Where(a => a.RunId == id)
             join unit in db.Units on assignment.UnitId equals unit.Id
             join condition in db.Conditions on assignment.ConditionId equals condition.Id
             orderby assignment.Number

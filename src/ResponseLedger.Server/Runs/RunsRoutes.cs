@@ -1,5 +1,6 @@
 using System.Text.Json.Nodes;
 using ResponseLedger.Server.Http;
+using ResponseLedger.Server.Lots;
 using ResponseLedger.Server.People;
 using ResponseLedger.Server.Runs.Upload;
 
@@ -54,6 +55,10 @@ internal static class RunsRoutes
         runs.MapGet("/{id:guid}/trace", RunTraces.GetAsync).RequireAuthorization(Policies.Read)
             .ProducesProblem(StatusCodes.Status404NotFound).ProducesValidationProblem(StatusCodes.Status422UnprocessableEntity)
             .WithName("getTrace").WithSummary("The curve, all points or reduced to `points` without losing a peak or a notch.");
+        runs.MapGet("/{id:guid}/overlay", RunOverlay.GetAsync).RequireAuthorization(Policies.Read)
+            .Produces<OverlayShape>().ProducesProblem(StatusCodes.Status404NotFound).ProducesProblem(StatusCodes.Status409Conflict)
+            .ProducesValidationProblem(StatusCodes.Status422UnprocessableEntity)
+            .WithName("getRunOverlay").WithSummary("The run with its golden run and its limits, as the overlay of a lot draws them.");
         runs.MapGet("/{id:guid}/file", RunFileRoutes.OriginalAsync).RequireAuthorization(Policies.Read)
             .Produces<byte[]>(contentType: Bytes).ProducesProblem(StatusCodes.Status404NotFound)
             .WithName("getFile").WithSummary("The bytes as they came; `index` picks a file of several.");

@@ -50,4 +50,7 @@ public sealed class Act
     public Guid ById => Actor.Id ?? Guid.Empty;
 
     internal IReadOnlyList<LedgerEntryRow> Entries => entries;
+
+    /// <summary>How many of the entries, from the first on, the act has written itself, in a batch with its rows.</summary>
+    internal int EntriesWritten { get; set; }
 }

@@ -1,3 +1,4 @@
+using System.Data;
 using Microsoft.EntityFrameworkCore;
 using Microsoft.EntityFrameworkCore.Storage;
 using Npgsql;
@@ -28,21 +29,41 @@ public sealed class ActRunner(IDbContextFactory<ResponseLedgerContext> contexts,
             {
                 await using var db = await contexts.CreateDbContextAsync(token);
                 await using var transaction = await db.Database.BeginTransactionAsync(token);
-                var attempt = new Act(db, actor, Microseconds.Cut(time.GetUtcNow()), time);
-                var value = await body(attempt, token);
-                if (attempt.Entries.Count == 0)
-                    throw new InvalidOperationException("An act records at least one ledger entry.");
+                var connection = (NpgsqlConnection)db.Database.GetDbConnection();
+                try
+                {
+                    db.HoldsTransaction = true;
+                    backend = connection.ProcessID;
 
-                db.LedgerEntries.AddRange(attempt.Entries);
-                db.LedgerQueue.AddRange(attempt.Entries.Select(e => new LedgerQueueRow { EntryId = e.Id }));
-                await db.SaveChangesAsync(token);
-                committing = attempt.Entries[0].Id;
-                backend = ((NpgsqlConnection)db.Database.GetDbConnection()).ProcessID;
-                outcome = value;
+                    // An act is done whole or not at all, so nothing ever goes back to a savepoint: each would cost two round trips.
+                    db.Database.AutoSavepointsEnabled = false;
+                    var attempt = new Act(db, actor, Microseconds.Cut(time.GetUtcNow()), time);
+                    var value = await body(attempt, token);
+                    if (attempt.Entries.Count == 0)
+                        throw new InvalidOperationException("An act records at least one ledger entry.");
 
-                // From here the outcome may be unknown to us: the caller's cancellation must not blur it further.
-                await transaction.CommitAsync(CancellationToken.None);
-                return value;
+                    foreach (var entry in attempt.Entries.Skip(attempt.EntriesWritten))
+                    {
+                        db.LedgerEntries.Add(entry);
+                        db.LedgerQueue.Add(new LedgerQueueRow { EntryId = entry.Id });
+                    }
+
+                    await db.SaveChangesAsync(token);
+                    committing = attempt.Entries[0].Id;
+                    outcome = value;
+
+                    // From here the outcome may be unknown to us: the caller's cancellation must not blur it further.
+                    await transaction.CommitAsync(CancellationToken.None);
+                    return value;
+                }
+                catch (InvalidOperationException broken) when (connection.State != ConnectionState.Open)
+                {
+                    throw BrokenConnection.Told(broken);
+                }
+                finally
+                {
+                    db.HoldsTransaction = false;
+                }
             },
             async (_, body, token) =>
             {

@@ -1,5 +1,7 @@
 using Microsoft.EntityFrameworkCore;
 using Npgsql;
+using ResponseLedger.Records.Verdicts;
+using ResponseLedger.Store.Judging;
 using ResponseLedger.Store.Queries;
 using static ResponseLedger.Store.Queries.PreparedBatch;
 
@@ -19,8 +21,8 @@ public sealed record FoundDevice(Guid Id, string PartNumber, string Revision);
 /// <summary>A lot that fits.</summary>
 public sealed record FoundLot(Guid Id, Guid DeviceId, string Number);
 
-/// <summary>A condition of a device that fits, in the device's order.</summary>
-public sealed record FoundCondition(Guid Id, Guid DeviceId, string Name);
+/// <summary>A condition of a device that fits, in the device's order, with what its runs are judged by now; null where it has no released mask.</summary>
+public sealed record FoundCondition(Guid Id, Guid DeviceId, string Name, CurrentBasis? Basis);
 
 /// <summary>A bench that fits, with its pattern for serial numbers in file names.</summary>
 /// <param name="Id">The bench.</param>
@@ -51,13 +53,15 @@ public static class IntakeLookup
 
     private const string LotsSql = "select id, device_id, number from lot where id = $1 or number = $2 order by device_id limit 50";
 
-    private const string ConditionsSql =
-        """
-        select id, device_id, name from condition
-        where device_id in (select id from device where id = $1 or part_number = $2 or (part_number = $3 and revision = $4))
-           or device_id in (select device_id from lot where id = $5 or number = $6)
-        order by device_id, ordinal
-        """;
+    private static readonly string ConditionsSql =
+        $"""
+         select c.id, c.device_id, c.name, f.*
+         from condition c
+         left join lateral ({CurrentBases.InForceOf("$7")}) f on true
+         where c.device_id in (select id from device where id = $1 or part_number = $2 or (part_number = $3 and revision = $4))
+            or c.device_id in (select device_id from lot where id = $5 or number = $6)
+         order by c.device_id, c.ordinal
+         """;
 
     private const string BenchesSql =
         """
@@ -80,14 +84,14 @@ public static class IntakeLookup
             await using var batch = On(db);
             batch.Add(DevicesSql, DeviceKeys(names.Device));
             batch.Add(LotsSql, Keys(names.Lot));
-            batch.Add(ConditionsSql, [.. DeviceKeys(names.Device), .. Keys(names.Lot)]);
+            batch.Add(ConditionsSql, [.. DeviceKeys(names.Device), .. Keys(names.Lot), Of(Judge.EngineVersion)]);
             batch.Add(BenchesSql, [.. Keys(names.Bench), Of(names.BoundBenchId), Of(names.TokenId)]);
             await batch.PrepareAsync(cancellationToken);
             await using var reader = await batch.ExecuteReaderAsync(cancellationToken);
             return new FoundPlaces(
                 await ListAsync(reader, r => new FoundDevice(r.GetGuid(0), r.GetString(1), r.GetString(2)), cancellationToken),
                 await ListAsync(reader, r => new FoundLot(r.GetGuid(0), r.GetGuid(1), r.GetString(2)), cancellationToken),
-                await ListAsync(reader, r => new FoundCondition(r.GetGuid(0), r.GetGuid(1), r.GetString(2)), cancellationToken),
+                await ListAsync(reader, ReadCondition, cancellationToken),
                 await ListAsync(reader, ReadBench, cancellationToken));
         }
         finally
@@ -95,6 +99,9 @@ public static class IntakeLookup
             await db.Database.CloseConnectionAsync();
         }
     }
+
+    private static FoundCondition ReadCondition(NpgsqlDataReader row)
+        => new(row.GetGuid(0), row.GetGuid(1), row.GetString(2), CurrentBases.Read(row, row.GetGuid(0), 3));
 
     private static FoundBench ReadBench(NpgsqlDataReader row)
         => new(row.GetGuid(0), row.GetString(1), row.IsDBNull(2) ? null : row.GetString(2), row.IsDBNull(3) ? null : row.GetDouble(3), IsTrue(row, 4), IsTrue(row, 5));

@@ -39,6 +39,9 @@ public sealed record IntakeOrder(
 /// <param name="Open">Gives the bytes; asked for once, when the file's turn comes.</param>
 public sealed record IntakeFile(string Name, string Serial, byte[] Sha256, Func<CancellationToken, Task<byte[]>> Open)
 {
+    /// <summary>What the bytes were read as with the order's columns, where they were read before their turn; else null.</summary>
+    public FileReading? Reading { get; init; }
+
     /// <summary>A file whose bytes are at hand.</summary>
     public static IntakeFile Of(string name, string serial, byte[] content)
         => new(name, serial, SHA256.HashData(content), _ => Task.FromResult(content));

@@ -5,7 +5,6 @@ using ResponseLedger.Engine.Sweeps;
 using ResponseLedger.Formats;
 using ResponseLedger.Records.Verdicts;
 using ResponseLedger.Store.Acts;
-using ResponseLedger.Store.Curves;
 using ResponseLedger.Store.Queries;
 using static ResponseLedger.Store.Queries.PreparedBatch;
 
@@ -13,7 +12,7 @@ namespace ResponseLedger.Store.Intake;
 
 /// <summary>
 /// Writes everything that a taken file is: its bytes, grid and unit where they are new, the run, its first assignment, its
-/// first reading with the curve, and the verdict. One round trip.
+/// first reading with the curve, the verdict, and the act's ledger entries. One round trip.
 /// </summary>
 internal static class IntakeRows
 {
@@ -45,16 +44,14 @@ internal static class IntakeRows
     private const string CurveSql = "insert into curve (reading_id, planes) values ($1, $2)";
 
     public static async Task WriteAsync(
-        Act act, IntakeOrder order, IntakeFile file, byte[] content, byte[] filesDigest, Guid runId, FileReading reading,
-        StoredVerdictRow? verdict, CancellationToken cancellationToken)
+        Act act, IntakeOrder order, IntakeFile file, byte[] content, byte[] filesDigest, Guid runId, FileReading reading, IntakeWork work,
+        CancellationToken cancellationToken)
     {
         var sweep = reading.Sweep!;
         var readingId = act.NewId();
-        var grid = CurveCodec.PackGrid(sweep);
-        var gridKey = CurveCodec.GridKey(grid);
         await using var batch = On(act.Db);
         batch.Add(FileSql, Of(file.Sha256), Of(content), Of(act.At));
-        batch.Add(GridSql, Of(gridKey), Of(sweep.Count), Of(grid));
+        batch.Add(GridSql, Of(work.GridKey), Of(sweep.Count), Of(work.Grid));
         batch.Add(UnitSql, Of(act.NewId()), Of(order.DeviceId), Of(file.Serial), Of(act.At));
         batch.Add(
             RunSql,
@@ -62,10 +59,11 @@ internal static class IntakeRows
             Of(order.MeasuredAt ?? act.At), OfText(order.Circumstances), Of(act.At), Of(act.PersonId), Of(act.TokenId));
         batch.Add(RunFileSql, Of(runId), Of(file.Sha256), Of(file.Name));
         batch.Add(AssignmentSql, Of(runId), Of(order.ConditionId));
-        AddReading(batch, act, runId, readingId, gridKey, sweep, reading);
-        batch.Add(CurveSql, Of(readingId), Of(CurveCodec.PackPlanes(sweep)));
-        if (verdict is not null)
+        AddReading(batch, act, runId, readingId, work.GridKey, sweep, reading);
+        batch.Add(CurveSql, Of(readingId), Of(work.Planes));
+        if (work.Verdict is { } verdict)
             verdict.AddTo(batch, act.NewId(), readingId, act.At);
+        LedgerRows.AddTo(batch, act);
         await batch.PrepareAsync(cancellationToken);
         await batch.ExecuteNonQueryAsync(cancellationToken);
     }

@@ -8,6 +8,7 @@ using ResponseLedger.Records.Decisions;
 using ResponseLedger.Records.Verdicts;
 using ResponseLedger.Store.Acts;
 using ResponseLedger.Store.Judging;
+using ResponseLedger.Store.Queries;
 
 namespace ResponseLedger.Store.Intake;
 
@@ -24,12 +25,25 @@ public sealed class RunIntake(
     public async Task<IReadOnlyList<IntakeResult>> TakeAsync(
         Actor actor, IntakeOrder order, IReadOnlyList<IntakeFile> files, CancellationToken cancellationToken)
     {
-        ArgumentNullException.ThrowIfNull(actor);
         ArgumentNullException.ThrowIfNull(order);
-        ArgumentNullException.ThrowIfNull(files);
         CurrentBasis? current;
         await using (var db = await contexts.CreateDbContextAsync(cancellationToken))
             current = await CurrentBases.FindAsync(db, order.ConditionId, cancellationToken);
+        return await TakeAsync(actor, order, current, files, cancellationToken);
+    }
+
+    /// <summary>Takes the files in their order, and tells what became of each.</summary>
+    /// <param name="actor">Who sends them.</param>
+    /// <param name="order">Where they belong.</param>
+    /// <param name="current">The basis in force of the condition as it was just looked up; null where it has no released mask.</param>
+    /// <param name="files">The files.</param>
+    /// <param name="cancellationToken">Stops between files.</param>
+    public async Task<IReadOnlyList<IntakeResult>> TakeAsync(
+        Actor actor, IntakeOrder order, CurrentBasis? current, IReadOnlyList<IntakeFile> files, CancellationToken cancellationToken)
+    {
+        ArgumentNullException.ThrowIfNull(actor);
+        ArgumentNullException.ThrowIfNull(order);
+        ArgumentNullException.ThrowIfNull(files);
 
         // A basis never changes. One that is replaced while the batch runs leaves verdicts that are merely stale.
         var basis = current is null ? null : await material.OfAsync(current.BasisId, cancellationToken);
@@ -57,12 +71,10 @@ public sealed class RunIntake(
             read = read with { Reading = read.Reading with { Sweep = sweep } };
         }
 
-        var judged = basis is null ? null : new IntakeVerdict(Judge.Evaluate(sweep, basis), basis);
-        var verdict = judged is null ? null : new StoredVerdictRow(current!.BasisId, judged.Judgement);
+        var work = new Lazy<IntakeWork>(() => IntakeWork.Of(sweep, current, basis));
         try
         {
-            return await acts.RunAsync(
-                actor, (act, token) => TakeAsync(act, order, file, content, filesDigest, read, judged, verdict, token), cancellationToken);
+            return await acts.RunAsync(actor, (act, token) => TakeAsync(act, order, file, content, filesDigest, read, work, token), cancellationToken);
         }
         catch (NotTakenException notTaken)
         {
@@ -75,10 +87,10 @@ public sealed class RunIntake(
     }
 
     private static async Task<IntakeResult> TakeAsync(
-        Act act, IntakeOrder order, IntakeFile file, byte[] content, byte[] filesDigest, ReadFile read, IntakeVerdict? judged,
-        StoredVerdictRow? verdict, CancellationToken cancellationToken)
+        Act act, IntakeOrder order, IntakeFile file, byte[] content, byte[] filesDigest, ReadFile read, Lazy<IntakeWork> work, CancellationToken cancellationToken)
     {
-        var found = await IntakeChecks.FindAsync(act.Db, order, file, filesDigest, locking: true, cancellationToken);
+        var (found, made) = await WhileWaiting.DoAsync(
+            IntakeChecks.FindAsync(act.Db, order, file, filesDigest, locking: true, cancellationToken), () => work.Value);
         if (found.First is { } first)
             throw new NotTakenException(IntakeResult.Duplicate(file.Name, file.Serial, first, found.PlacedElsewhere));
         if (found.DecidedLot is { } decided)
@@ -87,18 +99,18 @@ public sealed class RunIntake(
             throw Refuse(file, IntakeNotes.SameFileOtherUnit, IntakeNotes.OtherUnitSentence(other));
 
         var runId = act.NewId();
-        await IntakeRows.WriteAsync(act, order, file, content, filesDigest, runId, read.Reading, verdict, cancellationToken);
         if (read.ToRemember is { } choice)
             ColumnMemory.Remember(act, order, choice);
-        Record(act, order, file, runId, judged);
+        Record(act, order, file, runId, made.Judged);
+        await IntakeRows.WriteAsync(act, order, file, content, filesDigest, runId, read.Reading, made, cancellationToken);
         return new IntakeResult(
-            file.Name, file.Serial, IntakeOutcome.Accepted, runId, judged, NotesOf(order, read, found), [], []);
+            file.Name, file.Serial, IntakeOutcome.Accepted, runId, made.Judged, NotesOf(order, read, found), [], []);
     }
 
     private async Task<ReadFile> ReadAsync(
         IntakeOrder order, IntakeFile file, byte[] content, HashSet<string> settledHeads, CancellationToken cancellationToken)
     {
-        var reading = SweepFileReader.Read(content, file.Name, order.Columns, cancellationToken);
+        var reading = file.Reading ?? SweepFileReader.Read(content, file.Name, order.Columns, cancellationToken);
         if (order.Columns is { } chosen)
         {
             // Only a choice that settled something new is worth remembering, and without heads there is nothing to know files by.

@@ -1,4 +1,5 @@
 using Microsoft.EntityFrameworkCore;
+using Npgsql;
 using ResponseLedger.Records.Verdicts;
 using ResponseLedger.Store.Acts;
 using ResponseLedger.Store.Queries;
@@ -19,20 +20,31 @@ public sealed record CurrentBasis(Guid BasisId, Guid ConditionId, Guid MaskId, i
 /// </summary>
 public static class CurrentBases
 {
-    // Asked for by every upload, so prepared: planning these lookups takes longer than running them.
-    private const string Sql =
-        """
-        select b.id, m.mask_id, m.number, b.golden_reading_id
-        from condition c
-        cross join lateral (select mask_id, number from mask_revision where condition_id = c.id order by number desc limit 1) m
-        left join lateral (select reading_id from golden_choice where condition_id = c.id order by number desc limit 1) g on true
-        cross join lateral (select decision_rule from device_setting where device_id = c.device_id order by number desc limit 1) s
-        join basis b on b.condition_id = c.id and b.mask_id = m.mask_id and b.golden_reading_id is not distinct from g.reading_id
-            and b.decision_rule = s.decision_rule and b.engine_version = $2
-        where c.id = $1
-        order by b.at desc
-        limit 1
-        """;
+    private static readonly string Sql = $"select f.* from condition c cross join lateral ({InForceOf("$2")}) f where c.id = $1";
+
+    /// <summary>
+    /// The row of the basis in force of condition <c>c</c>, for a lateral join: basis, mask, number of the revision, golden reading.
+    /// None where no mask is released. Asked for by every upload, so it is prepared: planning takes longer than running it.
+    /// </summary>
+    /// <param name="engineParameter">The parameter that holds the engine's version.</param>
+    internal static string InForceOf(string engineParameter) =>
+        $"""
+         select b.id as basis_id, m.mask_id, m.number as mask_revision, b.golden_reading_id
+         from (select mask_id, number from mask_revision where condition_id = c.id order by number desc limit 1) m
+         left join (select reading_id from golden_choice where condition_id = c.id order by number desc limit 1) g on true
+         cross join (select decision_rule from device_setting where device_id = c.device_id order by number desc limit 1) s
+         join basis b on b.condition_id = c.id and b.mask_id = m.mask_id and b.golden_reading_id is not distinct from g.reading_id
+             and b.decision_rule = s.decision_rule and b.engine_version = {engineParameter}
+         order by b.at desc
+         limit 1
+         """;
+
+    /// <summary>Reads such a row; null where there is none.</summary>
+    /// <param name="row">The row.</param>
+    /// <param name="conditionId">The condition.</param>
+    /// <param name="first">The ordinal of its first column.</param>
+    internal static CurrentBasis? Read(NpgsqlDataReader row, Guid conditionId, int first)
+        => row.IsDBNull(first) ? null : new CurrentBasis(row.GetGuid(first), conditionId, row.GetGuid(first + 1), row.GetInt32(first + 2), row.GuidOrNull(first + 3));
 
     /// <summary>The basis in force, or null where the condition has no released mask.</summary>
     public static Task<CurrentBasis?> FindAsync(ResponseLedgerContext db, Guid conditionId, CancellationToken cancellationToken)
@@ -72,9 +84,7 @@ public static class CurrentBases
             batch.Add(Sql, PreparedBatch.Of(conditionId), PreparedBatch.Of(Judge.EngineVersion));
             await batch.PrepareAsync(cancellationToken);
             await using var row = await batch.ExecuteReaderAsync(cancellationToken);
-            return await row.ReadAsync(cancellationToken)
-                ? new CurrentBasis(row.GetGuid(0), conditionId, row.GetGuid(1), row.GetInt32(2), row.GuidOrNull(3))
-                : null;
+            return await row.ReadAsync(cancellationToken) ? Read(row, conditionId, 0) : null;
         }
         finally
         {

@@ -26,15 +26,19 @@ public sealed partial class RunVerdicts(IDbContextFactory<ResponseLedgerContext>
     // Room for the last digits, which another processor's summation may round otherwise.
     private const double RelativeRounding = 1e-9;
 
+    /// <summary>The basis that holds for a run, or null where no mask was released. The run must exist.</summary>
+    public async Task<Guid?> BasisOfAsync(Guid runId, CancellationToken cancellationToken)
+    {
+        await using var db = await contexts.CreateDbContextAsync(cancellationToken);
+        return await BasisOfAsync(db, await PlaceAsync(db, runId, cancellationToken), cancellationToken);
+    }
+
     /// <summary>The verdict, or null where no mask was released. The run must exist.</summary>
     public async Task<RunVerdict?> OfAsync(Guid runId, CancellationToken cancellationToken)
     {
         await using var db = await contexts.CreateDbContextAsync(cancellationToken);
         var place = await PlaceAsync(db, runId, cancellationToken);
-        var basisId = place.DecisionId is null
-            ? (await CurrentBases.FindAsync(db, place.ConditionId, cancellationToken))?.BasisId
-            : place.PinnedBasisId;
-        if (basisId is not { } id)
+        if (await BasisOfAsync(db, place, cancellationToken) is not { } id)
             return null;
 
         var stored = await (
@@ -56,6 +60,11 @@ public sealed partial class RunVerdicts(IDbContextFactory<ResponseLedgerContext>
             LogDrift(log, runId, verdict.Id, stored.EngineVersion);
         return new RunVerdict(judgedBy, WithStored(rebuilt.Evaluation, verdict), stored.EngineVersion, place.DecisionId is not null, Stored: true);
     }
+
+    private static async Task<Guid?> BasisOfAsync(ResponseLedgerContext db, Place place, CancellationToken cancellationToken)
+        => place.DecisionId is null
+            ? (await CurrentBases.FindAsync(db, place.ConditionId, cancellationToken))?.BasisId
+            : place.PinnedBasisId;
 
     private static async Task<Place> PlaceAsync(ResponseLedgerContext db, Guid runId, CancellationToken cancellationToken)
         => await (

@@ -153,4 +153,17 @@ public sealed class GainLimitTests
         var empty = MaskEvaluator.Evaluate(Hill, null, new Mask([], []), DeviceTraits.Transfer);
         Assert.Equal((Outcome.Pass, null), (empty.Outcome, empty.WorstIndex));
     }
+
+    [Fact]
+    public void A_grid_that_misses_the_ends_by_rounding_spans_them()
+    {
+        // 10^(log10 20 + 3 i / 30) begins at 20.000000000000004.
+        double[] f = [.. Enumerable.Range(0, 31).Select(i => Math.Pow(10, Math.Log10(20) + 3.0 * i / 30))];
+        Assert.True(f[0] > 20 || f[^1] < 20_000);
+        var run = Measuring.Levels(f, new double[31]);
+        run.Judge(Upper((20, 1), (20_000, 1))).Is(Outcome.Pass, 1, 20);
+        Measuring.Close(0, run.Measure("level", ("frequencyHz", 20)).Value("gainDb"), 0, "level at 20 Hz");
+        Measuring.Close(0, run.Measure("ripple", ("fromHz", 20), ("toHz", 20_000)).Value("rippleDb"), 0, "ripple");
+        Assert.Equal(Outcome.Inconclusive, run.Judge(Upper((19.99, 1), (20_000, 1))).Outcome);
+    }
 }

@@ -1,4 +1,5 @@
 using ResponseLedger.Engine.Masks;
+using ResponseLedger.Engine.Measures;
 using ResponseLedger.Engine.Sweeps;
 using static ResponseLedger.Engine.Tests.Masks.Masking;
 
@@ -19,6 +20,56 @@ public sealed class PhaseAndGoldenLimitTests
         Assert.Equal("deg", Phases(10, 0, 25).Judge(limit).Unit);
         // The limit starts at 100 Hz: there the branch is chosen, not at the start of the sweep.
         Phases(170, 290, 400).Judge(Lower((100, -80), (1000, 30)).Of(CurveQuantity.PhaseDeg)).Is(Outcome.Pass, 10, 100);
+    }
+
+    [Fact]
+    public void All_phase_limits_of_a_mask_meet_one_branch_of_the_run()
+    {
+        // Each limit alone would draw the run to itself: the upper one down by a turn, the lower one not.
+        var run = Phases(-179, -150, -100);
+        var mask = new Mask(
+            [Upper((10, 10), (1000, 10)).Of(CurveQuantity.PhaseDeg), Lower((10, -190), (1000, -190)).Of(CurveQuantity.PhaseDeg)], []);
+        var found = MaskEvaluator.Evaluate(run, null, mask, DeviceTraits.Transfer).Criteria;
+        found[0].Is(Outcome.Pass, 110, 1000);
+        found[1].Is(Outcome.Pass, 11, 10);
+        var other = MaskEvaluator.Evaluate(Phases(181, 210, 260), null, mask, DeviceTraits.Transfer).Criteria;
+        Assert.Equal(found.Select(c => (c.Outcome, c.Margin)), other.Select(c => (c.Outcome, c.Margin)));
+    }
+
+    [Fact]
+    public void The_branch_is_chosen_where_an_upper_and_a_lower_limit_first_meet_the_run()
+    {
+        var mask = new Mask(
+            [Upper((10, 300), (1000, 300)).Of(CurveQuantity.PhaseDeg), Lower((100, -100), (1000, -100)).Of(CurveQuantity.PhaseDeg)], []);
+        var found = MaskEvaluator.Evaluate(Phases(0, 0, 0), null, mask, DeviceTraits.Transfer).Criteria;
+        found[0].Is(Outcome.Pass, 300, 10);
+        found[1].Is(Outcome.Pass, 100, 100);
+    }
+
+    [Fact]
+    public void A_golden_delay_is_compared_on_the_branch_of_the_ratio()
+    {
+        // Steps of -179.5 degrees in one and -180.5, read as 179.5, in the other: by themselves the delays stand a millisecond apart.
+        double[] f = [1000, 2000, 3000, 4000, 5000];
+        var run = Measuring.LevelsAndPhases(f, new double[5], Array.ConvertAll(f, x => -360 * x * 0.4986111e-3));
+        var golden = Measuring.LevelsAndPhases(f, new double[5], Array.ConvertAll(f, x => -360 * x * 0.5013889e-3));
+        var found = run.Judge(Upper((1000, 10e-6), (5000, 10e-6)).Of(CurveQuantity.DelaySeconds).AgainstGolden(), golden);
+        Assert.Equal(Outcome.Pass, found.Outcome);
+        Measuring.Close(10e-6 + 2.7778e-6, found.Margin, 1e-15, "margin");
+        Assert.Equal("suspectPhase", Assert.Single(found.Notes!).Code);
+        var below = run.Judge(Lower((1000, -1e-6), (5000, -1e-6)).Of(CurveQuantity.DelaySeconds).AgainstGolden(), golden);
+        Measuring.Close(1e-6 - 2.7778e-6, below.Margin, 1e-15, "lower margin");
+    }
+
+    [Fact]
+    public void A_golden_delay_on_another_grid_with_points_a_rounding_apart_is_no_noise()
+    {
+        double[] f = Measuring.LogGrid(100, 1000, 40);
+        double[] g = Array.ConvertAll(f, x => x * (1 + 3e-12));
+        var run = Measuring.LevelsAndPhases(f, new double[40], Array.ConvertAll(f, x => -360 * x * 1.2e-3));
+        var golden = Measuring.LevelsAndPhases(g, new double[40], Array.ConvertAll(g, x => -360 * x * 1e-3));
+        var found = run.Judge(Upper((200, 0.3e-3), (900, 0.3e-3)).Of(CurveQuantity.DelaySeconds).AgainstGolden(), golden);
+        Measuring.Close(0.1e-3, found.Margin, 1e-9, "margin");
     }
 
     [Fact]

@@ -55,6 +55,16 @@ public sealed class RequirementTests
     }
 
     [Fact]
+    public void A_loop_whose_phase_crossovers_all_lie_above_0_dB_is_not_accepted_for_want_of_a_gain_margin()
+    {
+        // -180 degrees is met at 14 dB; only the gain reduction is known.
+        var beyond = Measuring.LevelsAndPhases([1, 10, 100], [20, 10, -20], [-150, -200, -260]);
+        var margin = Require("loopMargins", "gainMarginDb", 6, null, null) with { AcceptNoCrossover = true };
+        beyond.Judge(margin).Is(Outcome.Inconclusive, null, null, "noCrossover");
+        beyond.Judge(Require("loopMargins", "gainReductionDb", null, -20, null)).Is(Outcome.Fail, -6, Math.Pow(10, 0.6));
+    }
+
+    [Fact]
     public void No_crossover_is_inconclusive_unless_accepted_and_no_phase_is_never_accepted()
     {
         var quiet = Measuring.LevelsAndPhases([1, 10], [-3, -30], [-10, -80]);
@@ -65,6 +75,18 @@ public sealed class RequirementTests
         levels.Judge(margin with { AcceptNoCrossover = true }).Is(Outcome.Inconclusive, null, null, "phaseAbsent");
         levels.Judge(Require("loopMargins", "gainMarginDb", 6, null, null) with { AcceptNoCrossover = true }).Is(Outcome.Inconclusive, null, null, "phaseAbsent");
         levels.Judge(Require("loopMargins", "gainCrossoverHz", 1.5, null, null)).Is(Outcome.Fail, Math.Pow(10, 3.0 / 33) - 1.5, Math.Pow(10, 3.0 / 33));
+    }
+
+    [Fact]
+    public void A_bound_in_seconds_is_not_rounded_away_by_nanoseconds()
+    {
+        // A delay of 5 ns all along against 4.2 ns.
+        double[] f = [1e6, 2e6, 3e6];
+        var run = Measuring.LevelsAndPhases(f, [0, 0, 0], Array.ConvertAll(f, x => -360 * x * 5e-9));
+        var found = run.Judge(Require("delay", "delaySeconds", null, 4.2e-9, null, ("frequencyHz", 2e6)));
+        Assert.Equal(Outcome.Fail, found.Outcome);
+        Measuring.Close(-0.8e-9, found.Margin, 1e-18, "margin");
+        Assert.Equal(Outcome.Fail, run.Judge(Upper((1e6, 4.2e-9), (3e6, 4.2e-9)).Of(CurveQuantity.DelaySeconds)).Outcome);
     }
 
     [Fact]

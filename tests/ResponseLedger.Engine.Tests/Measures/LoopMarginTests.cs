@@ -69,6 +69,39 @@ public sealed class LoopMarginTests
         => Assert.Equal((-30, 10), (Margins(Measuring.LevelsAndPhases([1, 10], [0, 0], [-150, -210])).Value("phaseMarginDeg"),
             Margins(Measuring.LevelsAndPhases([1, 10], [0, 0], [-150, -210])).Value("gainCrossoverHz")));
 
+    [Theory]
+    [InlineData(120, -20)]
+    [InlineData(6000, -6000)]
+    [InlineData(6160, -6400)]
+    public void Extreme_levels_leave_the_least_distance_where_the_gain_is_near_one(double startDb, double endDb)
+    {
+        // Constant phase 60 degrees from the critical one: the foot of the ray lies at |L| = 1/2, and the search must not wander far from it.
+        var found = Margins(Measuring.LevelsAndPhases([1, 10], [startDb, endDb], [-120, -120]));
+        Measuring.Close(Math.Sqrt(0.75), found.Value("leastDistance"), 1e-12, "foot of the ray");
+    }
+
+    [Fact]
+    public void Steep_pieces_in_numbers_give_the_least_distance_of_a_dense_scan()
+    {
+        double[] f = Measuring.LogGrid(1, 1e4, 401);
+        var level = f.Select((_, i) => i % 2 == 0 ? 80.0 : -80.0).ToArray();
+        var phase = f.Select((_, i) => -90.0 - 0.4 * i).ToArray();
+        var found = Margins(Measuring.LevelsAndPhases(f, level, phase)).Value("leastDistance")!.Value;
+        double scanned = double.PositiveInfinity;
+        for (int i = 0; i + 1 < f.Length; i++)
+        {
+            for (int k = 0; k <= 4000; k++)
+            {
+                double t = k / 4000.0;
+                var gain = System.Numerics.Complex.FromPolarCoordinates(
+                    Math.Pow(10, (level[i] + t * (level[i + 1] - level[i])) / 20), (phase[i] + t * (phase[i + 1] - phase[i])) * Math.PI / 180);
+                scanned = Math.Min(scanned, (1 + gain).Magnitude);
+            }
+        }
+
+        Assert.InRange(found, scanned - 1e-3, scanned + 1e-12);
+    }
+
     [Fact]
     public void The_least_distance_of_straight_ways_is_that_of_geometry()
     {

@@ -115,6 +115,25 @@ public sealed class BenchTests(Lab lab)
             await answer.ShouldRefuseAsync(HttpStatusCode.Conflict, "changedMeanwhile");
     }
 
+    [Fact]
+    public async Task Serials_are_found_in_names_as_an_upload_from_the_bench_would()
+    {
+        var id = await NewBenchAsync();
+        var oper = await lab.SignInAsync("operator");
+        string[] fileNames = ["A7_1.csv", "run SN0012.txt", "plain.csv", "_.csv"];
+
+        var usual = await (await oper.PostAsJsonAsync($"/api/benches/{id}/serials", new { fileNames })).ShouldBeAsync(HttpStatusCode.OK);
+        Assert.Equal(["A7", "run SN0012", "plain", null], Serials(usual));
+
+        await (await (await lab.SignInAsync("engineer")).PatchAsJsonAsync($"/api/benches/{id}", new { serialPattern = "SN(?<serial>[0-9]+)" })).ShouldBeAsync(HttpStatusCode.OK);
+        var byPattern = await (await oper.PostAsJsonAsync($"/api/benches/{id}/serials", new { fileNames })).ShouldBeAsync(HttpStatusCode.OK);
+        Assert.Equal([null, "0012", null, null], Serials(byPattern));
+        await (await oper.PostAsJsonAsync($"/api/benches/{id}/serials", new { fileNames = Array.Empty<string>() })).ShouldRefuseAsync(HttpStatusCode.UnprocessableEntity);
+        await (await oper.PostAsJsonAsync("/api/benches/0199aaaa-0000-7000-8000-000000000002/serials", new { fileNames })).ShouldBeAsync(HttpStatusCode.NotFound);
+    }
+
+    private static string?[] Serials(JsonElement answer) => [.. answer.GetProperty("items").EnumerateArray().Select(item => item.GetProperty("serial").GetString())];
+
     private async Task<Guid> NewBenchAsync()
     {
         var manager = await lab.SignInAsync("manager");

@@ -76,6 +76,7 @@ public sealed class ChangeRunsTests(Lab lab)
         var id = await scene.AcceptedAsync("S1.csv", content);
         var moved = await (await scene.Engineer.PostAsJsonAsync($"/api/runs/{id}/reassignment", new { serial = "S2", reason = "wrong label" })).ShouldBeAsync(HttpStatusCode.Created);
         Assert.Equal("S2", moved.GetProperty("serial").GetString());
+        Assert.Equal("S1", moved.GetProperty("firstPlace").GetProperty("serial").GetString());
         var reassignment = Assert.Single(moved.GetProperty("reassignments").EnumerateArray());
         Assert.Equal(("S2", "wrong label", "engineer"), (reassignment.GetProperty("serial").GetString(), reassignment.GetProperty("reason").GetString(), reassignment.GetProperty("by").GetString()));
         foreach (var name in new[] { "S1.csv", "S2.csv" })

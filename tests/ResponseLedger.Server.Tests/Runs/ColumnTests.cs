@@ -57,6 +57,7 @@ public sealed class ColumnTests(Lab lab)
         Assert.Equal("S1", preview.GetProperty("serial").GetString());
         Assert.Equal(3, preview.GetProperty("columns").GetArrayLength());
         Assert.Empty(preview.GetProperty("issues").EnumerateArray());
+        Assert.Equal(2_000, preview.GetProperty("points").GetInt32());
         Assert.InRange(preview.GetProperty("trace").GetProperty("frequencyHz").GetArrayLength(), 2, 400);
 
         using var open = await RunScene.SendAsync(engineer, [], [("x.csv", Open("p"))], path: "/api/runs/preview");
@@ -65,6 +66,11 @@ public sealed class ColumnTests(Lab lab)
         Assert.Equal(System.Text.Json.JsonValueKind.Null, asked.GetProperty("trace").ValueKind);
         using var chosen = await RunScene.SendAsync(engineer, [("columns", Choice)], [("x.csv", Open("p"))], path: "/api/runs/preview");
         Assert.Equal(3, (await chosen.ShouldBeAsync(HttpStatusCode.OK)).GetProperty("trace").GetProperty("gainDb").GetArrayLength());
+
+        // Files with the same heads are known by one digest, whatever stands in them.
+        using var alike = await RunScene.SendAsync(engineer, [], [("y.csv", Open("q"))], path: "/api/runs/preview");
+        Assert.Equal(asked.GetProperty("headsDigest").GetString(), (await alike.ShouldBeAsync(HttpStatusCode.OK)).GetProperty("headsDigest").GetString());
+        Assert.NotEqual(asked.GetProperty("headsDigest").GetString(), preview.GetProperty("headsDigest").GetString());
 
         using var two = await RunScene.SendAsync(engineer, [], [("a.csv", Open("a")), ("b.csv", Open("b"))], path: "/api/runs/preview");
         await two.ShouldRefuseAsync(HttpStatusCode.UnprocessableEntity);

@@ -6,7 +6,8 @@ namespace ResponseLedger.Server.Runs.Upload;
 internal static class PartFileName
 {
     private const int Longest = 255;
-    private const string Nameless = "file";
+    /// <summary>Stands for a file that came without a name; no serial number is read from it.</summary>
+    public const string Nameless = "file";
 
     /// <summary>The name of a part; the extended notation (RFC 5987) goes before the plain one.</summary>
     public static string Of(ContentDispositionHeaderValue disposition)

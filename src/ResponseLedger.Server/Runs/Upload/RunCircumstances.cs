@@ -1,12 +1,19 @@
+using System.Globalization;
+using System.Text.Encodings.Web;
 using System.Text.Json;
+using System.Text.Json.Nodes;
 
 namespace ResponseLedger.Server.Runs.Upload;
 
-/// <summary>Under which circumstances a run was measured: <c>{temperatureC, driveVrms, sourceOhm, loadOhm, instruments[]}</c>, each of them optional.</summary>
+/// <summary>What a bench may say of the circumstances of a sweep: quantities in stated units, and the instruments.</summary>
 internal static class RunCircumstances
 {
     private const double AbsoluteZeroC = -273.15;
     private const string Instruments = "instruments";
+    private const int MostInstruments = 50;
+    private const int MostMembers = 20;
+    private const int LongestText = 200;
+    private const string InstrumentRule = "instruments is a list of at most 50 names, or of objects that describe an instrument each by at most 20 texts, numbers or truths. A text has 1 to 200 characters, none of them a control character.";
 
     private static readonly Dictionary<string, double> LeastValues = new(StringComparer.Ordinal)
     {
@@ -16,32 +23,103 @@ internal static class RunCircumstances
         ["loadOhm"] = 0,
     };
 
+    // Texts are kept readable; what is dangerous in a page is the page's to escape.
+    private static readonly JsonSerializerOptions Plain = new() { Encoder = JavaScriptEncoder.UnsafeRelaxedJsonEscaping };
+
     /// <summary>What is wrong with the text, or null.</summary>
     public static string? ProblemOf(string text)
+    {
+        Read(text, out var problem);
+        return problem;
+    }
+
+    /// <summary>The circumstances as they are kept: read in full and written anew, so that nothing is stored that cannot be read back. Null where there is a problem.</summary>
+    public static string? Kept(string text) => Read(text, out _)?.ToJsonString(Plain);
+
+    private static JsonObject? Read(string text, out string? problem)
     {
         try
         {
             using var document = JsonDocument.Parse(text, new JsonDocumentOptions { MaxDepth = 8 });
-            return document.RootElement.ValueKind == JsonValueKind.Object
-                ? document.RootElement.EnumerateObject().Select(ProblemOf).FirstOrDefault(p => p is not null)
-                : "The circumstances are a JSON object.";
+            if (document.RootElement.ValueKind != JsonValueKind.Object)
+            {
+                problem = "The circumstances are a JSON object.";
+                return null;
+            }
+
+            var kept = new JsonObject();
+            problem = document.RootElement.EnumerateObject().Select(member => Take(member, kept)).FirstOrDefault(p => p is not null);
+            return problem is null ? kept : null;
         }
-        catch (JsonException)
+        catch (Exception fault) when (fault is JsonException or InvalidOperationException)
         {
-            return "The circumstances are not well-formed JSON.";
+            // The second one is thrown by a text that is half of a surrogate pair.
+            problem = "The circumstances are not well-formed JSON.";
+            return null;
         }
     }
 
-    private static string? ProblemOf(JsonProperty member)
+    private static string? Take(JsonProperty member, JsonObject kept)
     {
-        if (member.NameEquals(Instruments))
-            return member.Value.ValueKind == JsonValueKind.Array && member.Value.EnumerateArray().All(i => i.ValueKind is JsonValueKind.String or JsonValueKind.Object)
-                ? null
-                : "instruments is a list of names, or of objects that describe an instrument each.";
-        if (!LeastValues.TryGetValue(member.Name, out var least))
-            return $"There is no circumstance \"{member.Name}\". Known are {string.Join(", ", LeastValues.Keys)} and {Instruments}.";
-        return member.Value.ValueKind == JsonValueKind.Number && member.Value.TryGetDouble(out var value) && double.IsFinite(value) && value >= least
-            ? null
-            : string.Create(System.Globalization.CultureInfo.InvariantCulture, $"{member.Name} is a number of {least} or more.");
+        var name = member.Name;
+        if (kept.ContainsKey(name))
+            return $"{name} stands twice; keep one.";
+        if (name == Instruments)
+        {
+            var list = InstrumentsOf(member.Value);
+            kept[name] = list;
+            return list is null ? InstrumentRule : null;
+        }
+
+        if (!LeastValues.TryGetValue(name, out var least))
+            return $"There is no such circumstance. Known are {string.Join(", ", LeastValues.Keys)} and {Instruments}.";
+        if (member.Value.ValueKind != JsonValueKind.Number || !member.Value.TryGetDouble(out var value) || !double.IsFinite(value) || value < least)
+            return string.Create(CultureInfo.InvariantCulture, $"{name} is a number of {least} or more.");
+        kept[name] = value;
+        return null;
     }
+
+    private static JsonArray? InstrumentsOf(JsonElement json)
+    {
+        if (json.ValueKind != JsonValueKind.Array || json.GetArrayLength() > MostInstruments)
+            return null;
+        var list = new JsonArray();
+        foreach (var element in json.EnumerateArray())
+        {
+            JsonNode? instrument = element.ValueKind switch
+            {
+                JsonValueKind.Object => Described(element),
+                JsonValueKind.String => Plainly(element),
+                _ => null,
+            };
+            if (instrument is null)
+                return null;
+            list.Add(instrument);
+        }
+
+        return list;
+    }
+
+    private static JsonObject? Described(JsonElement json)
+    {
+        var instrument = new JsonObject();
+        foreach (var member in json.EnumerateObject())
+        {
+            if (instrument.Count == MostMembers || !IsSound(member.Name) || instrument.ContainsKey(member.Name) || Plainly(member.Value) is not { } value)
+                return null;
+            instrument[member.Name] = value;
+        }
+
+        return instrument;
+    }
+
+    private static JsonValue? Plainly(JsonElement json) => json.ValueKind switch
+    {
+        JsonValueKind.String => json.GetString() is { } text && IsSound(text) ? JsonValue.Create(text) : null,
+        JsonValueKind.Number => json.TryGetDouble(out var number) && double.IsFinite(number) ? JsonValue.Create(number) : null,
+        JsonValueKind.True or JsonValueKind.False => JsonValue.Create(json.GetBoolean()),
+        _ => null,
+    };
+
+    private static bool IsSound(string text) => text.Length is >= 1 and <= LongestText && !text.Any(char.IsControl);
 }

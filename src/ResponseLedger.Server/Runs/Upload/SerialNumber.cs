@@ -15,15 +15,17 @@ internal static class SerialNumber
 
     /// <summary>
     /// The serial number in a file's name: by the bench's pattern (its group "serial", or the whole match), else the part before
-    /// the first underscore, else the name without its extension. Null when there is none.
+    /// the first underscore, else the name without its extension. Null when there is none: one has a letter or a digit.
     /// </summary>
     public static string? In(string fileName, string? benchPattern)
     {
+        if (fileName == PartFileName.Nameless)
+            return null;
         var cut = fileName.IndexOf('_', StringComparison.Ordinal);
         var serial = benchPattern is not null ? ByPattern(fileName, benchPattern)
             : cut < 0 ? Path.GetFileNameWithoutExtension(fileName)
             : fileName[..cut];
-        return serial is not null && IsSound(serial) ? serial.Trim() : null;
+        return serial is not null && IsSound(serial) && serial.Any(char.IsLetterOrDigit) ? serial.Trim() : null;
     }
 
     private static string? ByPattern(string fileName, string pattern)

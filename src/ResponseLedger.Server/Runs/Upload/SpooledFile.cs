@@ -15,6 +15,7 @@ internal sealed class SpooledFile : IAsyncDisposable
 
     private const int InMemoryBytes = 1 << 20;
     private const int ChunkBytes = 64 << 10;
+    private const int UsualBytes = 64 << 10;
 
     private readonly Stream? content;
 
@@ -47,7 +48,7 @@ internal sealed class SpooledFile : IAsyncDisposable
     {
         using var digest = IncrementalHash.CreateHash(HashAlgorithmName.SHA256);
         var chunk = ArrayPool<byte>.Shared.Rent(ChunkBytes);
-        Stream? kept = new MemoryStream();
+        Stream? kept = new MemoryStream(UsualBytes);
         try
         {
             long length = 0;
@@ -85,6 +86,9 @@ internal sealed class SpooledFile : IAsyncDisposable
             ArrayPool<byte>.Shared.Return(chunk);
         }
     }
+
+    /// <summary>The bytes, where they are kept in memory; else null.</summary>
+    public ReadOnlyMemory<byte>? InMemory => content is MemoryStream memory ? memory.GetBuffer().AsMemory(0, (int)memory.Length) : null;
 
     /// <summary>All bytes, in an array of exactly their length.</summary>
     public async Task<byte[]> BytesAsync(CancellationToken cancellationToken)

@@ -35,6 +35,9 @@ internal sealed record UploadFields(
     /// <summary>The columns chosen.</summary>
     public ColumnChoices? ColumnChoices => Columns is not null && Formats.ColumnChoices.TryParse(Columns, out var choices, out _) ? choices : null;
 
+    /// <summary>The circumstances as they are kept.</summary>
+    public string? KeptCircumstances => Circumstances is null ? null : RunCircumstances.Kept(Circumstances);
+
     public static bool TryTime(string? text, out DateTimeOffset time)
     {
         var known = DateTimeOffset.TryParseExact(

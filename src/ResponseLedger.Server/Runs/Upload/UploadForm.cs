@@ -1,3 +1,4 @@
+using System.Buffers;
 using System.Text;
 using Microsoft.AspNetCore.WebUtilities;
 using Microsoft.Net.Http.Headers;
@@ -14,6 +15,7 @@ internal sealed class UploadForm : IAsyncDisposable
     private const int MostFields = 64;
     private const int LongestField = 64 << 10;
     private const int LongestBoundary = 200;
+    private const int ReadBytes = 64 << 10;
 
     private readonly Dictionary<string, string> fields = new(StringComparer.Ordinal);
     private readonly List<SpooledFile> files = [];
@@ -31,7 +33,7 @@ internal sealed class UploadForm : IAsyncDisposable
     /// <exception cref="RefusedException">It is no multipart form, a field is unknown or repeated, or there is no file.</exception>
     public static async Task<UploadForm> ReadAsync(HttpRequest request, IReadOnlyCollection<string> known, CancellationToken cancellationToken)
     {
-        var reader = new MultipartReader(BoundaryOf(request), request.Body);
+        var reader = new MultipartReader(BoundaryOf(request), request.Body, ReadBytes);
         var form = new UploadForm();
         try
         {
@@ -80,14 +82,26 @@ internal sealed class UploadForm : IAsyncDisposable
     {
         if (fields.Count + errors.Count >= MostFields)
             throw new RefusedException(new FieldRefused("", $"One request takes {MostFields} fields at most."));
-        var bytes = new byte[LongestField + 1];
-        var length = await body.ReadAtLeastAsync(bytes, bytes.Length, throwOnEndOfStream: false, cancellationToken);
-        Count(length);
+        var bytes = ArrayPool<byte>.Shared.Rent(LongestField + 1);
+        try
+        {
+            var length = await body.ReadAtLeastAsync(bytes.AsMemory(0, LongestField + 1), LongestField + 1, throwOnEndOfStream: false, cancellationToken);
+            Count(length);
+            Keep(name, bytes.AsSpan(0, length), known);
+        }
+        finally
+        {
+            ArrayPool<byte>.Shared.Return(bytes);
+        }
+    }
+
+    private void Keep(string name, ReadOnlySpan<byte> value, IReadOnlyCollection<string> known)
+    {
         if (!known.Contains(name))
             errors[name] = [$"There is no field of this name here. Known are {string.Join(", ", known)} and file."];
-        else if (length > LongestField)
+        else if (value.Length > LongestField)
             errors[name] = [$"A field holds {LongestField} bytes at most."];
-        else if (!fields.TryAdd(name, Encoding.UTF8.GetString(bytes, 0, length).Trim()))
+        else if (!fields.TryAdd(name, Encoding.UTF8.GetString(value).Trim()))
             errors[name] = ["This field is given more than once."];
     }
 

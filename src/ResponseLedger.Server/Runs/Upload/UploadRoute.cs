@@ -7,6 +7,7 @@ using ResponseLedger.Server.People;
 using ResponseLedger.Store;
 using ResponseLedger.Store.Intake;
 using ResponseLedger.Store.Judging;
+using ResponseLedger.Store.Queries;
 
 namespace ResponseLedger.Server.Runs.Upload;
 
@@ -23,6 +24,7 @@ internal sealed class UploadRoute(
             ? TypedResults.Problem(
                 "No file was taken; each is named with what is wrong and how to mend it.",
                 statusCode: answer.Status,
+                type: "about:blank",
                 extensions: new Dictionary<string, object?> { ["code"] = "nothingTaken", ["results"] = answer.Results })
             : TypedResults.Json(answer, statusCode: answer.Status);
     }
@@ -36,20 +38,23 @@ internal sealed class UploadRoute(
                 .GroupBy(e => char.ToLowerInvariant(e.PropertyName[0]) + e.PropertyName[1..], e => e.ErrorMessage)
                 .ToDictionary(g => g.Key, g => g.ToArray())));
 
-        var found = await IntakeLookup.FindAsync(
-            db,
-            new PlaceNames(fields.Device, fields.Lot, fields.Bench, CurrentActor.BoundBench(user), CurrentActor.TokenId(user)),
-            cancellationToken);
+        var (found, early) = await WhileWaiting.DoAsync(
+            IntakeLookup.FindAsync(
+                db,
+                new PlaceNames(fields.Device, fields.Lot, fields.Bench, CurrentActor.BoundBench(user), CurrentActor.TokenId(user)),
+                cancellationToken),
+            () => EarlyReading(form.Files, fields, cancellationToken));
         var place = UploadPlace.Of(fields, found);
         var bench = await benches.OfAsync(user, fields.Bench, found.Benches, cancellationToken);
         var order = new IntakeOrder(
             place.DeviceId, place.Condition.Id, place.Condition.Name, place.Lot?.Id, place.Lot?.Number, bench.Id, bench.Name, fields.PurposeWord,
-            fields.MeasuredAtTime, fields.Circumstances, fields.ColumnChoices, bench.NoiseFloorDb, fields.Acknowledge is not null);
-        return new UploadAnswer(await TakeAsync(user, order, bench, fields.Serial?.Trim(), form.Files, cancellationToken));
+            fields.MeasuredAtTime, fields.KeptCircumstances, fields.ColumnChoices, bench.NoiseFloorDb, fields.Acknowledge is not null);
+        return new UploadAnswer(await TakeAsync(user, order, place.Condition.Basis, bench, fields.Serial?.Trim(), form.Files, early, cancellationToken));
     }
 
     private async Task<IReadOnlyList<UploadResult>> TakeAsync(
-        ClaimsPrincipal user, IntakeOrder order, UploadBench bench, string? serial, IReadOnlyList<SpooledFile> files, CancellationToken cancellationToken)
+        ClaimsPrincipal user, IntakeOrder order, CurrentBasis? current, UploadBench bench, string? serial, IReadOnlyList<SpooledFile> files,
+        FileReading? early, CancellationToken cancellationToken)
     {
         var results = new IntakeResult?[files.Count];
         var sound = new List<(int At, IntakeFile File)>(files.Count);
@@ -59,10 +64,10 @@ internal sealed class UploadRoute(
             var fileSerial = serial ?? SerialNumber.In(file.Name, bench.SerialPattern);
             results[i] = Unfit(file, fileSerial, bench);
             if (results[i] is null)
-                sound.Add((i, new IntakeFile(file.Name, fileSerial!, file.Sha256, file.BytesAsync)));
+                sound.Add((i, new IntakeFile(file.Name, fileSerial!, file.Sha256, file.BytesAsync) { Reading = early }));
         }
 
-        var taken = await intake.TakeAsync(CurrentActor.Of(user), order, [.. sound.Select(s => s.File)], cancellationToken);
+        var taken = await intake.TakeAsync(CurrentActor.Of(user), order, current, [.. sound.Select(s => s.File)], cancellationToken);
         for (var i = 0; i < sound.Count; i++)
             results[sound[i].At] = taken[i];
 
@@ -76,6 +81,10 @@ internal sealed class UploadRoute(
 
         return answers;
     }
+
+    // A bench sends one small file as a rule: it is read while the store looks up where it belongs.
+    private static FileReading? EarlyReading(IReadOnlyList<SpooledFile> files, UploadFields fields, CancellationToken cancellationToken)
+        => files is [{ IsZip: false, InMemory: { } content } file] ? SweepFileReader.Read(content, file.Name, fields.ColumnChoices, cancellationToken) : null;
 
     private static IntakeResult? Unfit(SpooledFile file, string? serial, UploadBench bench)
     {
