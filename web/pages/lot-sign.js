@@ -46,7 +46,7 @@ export async function signLot(lot, signing, name) {
     mayAct: () => !isDecided && chosen()?.blockers.length === 0,
     fields: ({ errors, update, close }) => html`
       <div class="sign">
-        <div class="sign-what">${whatIsSigned(shown, lot)}</div>
+        <div class="sign-what" tabindex="-1" autofocus>${whatIsSigned(shown, lot)}</div>
         <div class="stack">
           <fieldset class="choices">
             <legend>Decision</legend>

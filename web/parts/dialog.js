@@ -55,10 +55,10 @@ export function openDialog({ heading, content, wide = false, mayCancel }) {
   });
   const before = /** @type {HTMLElement | null} */ (document.activeElement);
   element.showModal();
-  // Fields render a moment later than the dialog opens; the first of them is where one begins.
+  // Fields render a moment later than the dialog opens; the first of them is where one begins, unless the content says where.
   requestAnimationFrame(() => {
     const first = element.querySelector('input:not(:disabled, [type="hidden"]), select:not(:disabled), textarea:not(:disabled)');
-    if (first instanceof HTMLElement && (document.activeElement === null || !(document.activeElement instanceof HTMLInputElement)))
+    if (first instanceof HTMLElement && element.querySelector('[autofocus]') === null && (document.activeElement === null || !(document.activeElement instanceof HTMLInputElement)))
       first.focus();
   });
   return new Promise((resolve) => {

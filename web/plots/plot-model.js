@@ -11,8 +11,8 @@ import { spanOf } from './value-span.js';
 /** @typedef {import('./trace-set.js').Overlay} Overlay */
 /** @typedef {'upper' | 'lower'} PanelKey */
 /** @typedef {{key: PanelKey, set: TraceSet, span: Span, groups: Uint8Array}} PanelModel */
-/** `notes` tell of the basis, `remarks` came with the overlays.
- * @typedef {{panels: PanelModel[], frequency: Span, named: import('./named-runs.js').NamedRun[], notes: string[], remarks: string[], count: number, background: number, odd: number}} PlotModel */
+/** `notes` tell what could not come along to the basis.
+ * @typedef {{panels: PanelModel[], frequency: Span, named: import('./named-runs.js').NamedRun[], notes: string[], count: number, background: number, odd: number}} PlotModel */
 /** @typedef {{upper: Overlay | null, lower: Overlay | null, basis: import('./bases.js').Basis, levelHz: number, chosen: string[] | null}} PlotQuestion */
 
 /**
@@ -40,7 +40,6 @@ export function plotModel({ upper, lower, basis, levelHz, chosen }) {
     },
     named,
     notes: [...notes],
-    remarks: basis === 'levelled' ? [] : [...new Set(given.flatMap(([, overlay]) => (overlay.notes ?? []).map(({ message }) => message)))],
     count: runs.length,
     background: runs.length - named.length,
     odd: runs.filter(isOdd).length,

@@ -154,6 +154,7 @@ export class PlotPicture {
     context.save();
     if (!hidden.has('limits')) clipped(context, panel, () => paintForbidden(context, panel, set.limits, this.theme, ratio));
     if (!hidden.has('background')) this.#showRuns(context, panel, layer, ratio);
+    if (layer.isSharp) layer.wantPercentiles();
     const { percentiles } = layer;
     if (percentiles && !hidden.has('percentiles')) clipped(context, panel, () => paintFan(context, panel, set.frequencyHz, percentiles, this.theme));
     context.restore();

@@ -79,7 +79,7 @@ function swatch(kind, dash) {
 }
 
 /**
- * What opens when it is asked for: remarks, the table under the cursor, and the keys.
+ * What opens when it is asked for: the table under the cursor, and the keys.
  * @param {ResponsePlot} plot @param {PlotModel} model @param {{id: string, atHz: number, open: boolean}} state
  */
 export function moreOf(plot, model, { id, atHz, open }) {
@@ -89,8 +89,6 @@ export function moreOf(plot, model, { id, atHz, open }) {
         <summary>All values at ${frequency(atHz)}</summary>
         ${open ? tableOf(model, atHz, plot.raisedRunId) : nothing}
       </details>
-      ${model.remarks.length === 0 ? nothing : html`
-        <details><summary>${several(model.remarks.length, 'remark')} on what is drawn</summary>${model.remarks.map((remark) => html`<p>${remark}</p>`)}</details>`}
       <details class="plot-help">
         <summary>Keys and pointer</summary>
         <p id="${id}-keys">With the plot in focus: left and right move the cursor, up and down walk through the runs, Enter picks one. Plus and minus zoom, Shift with an arrow moves the view, 0 shows the whole sweep. With a pointer: drag a box to zoom, Shift and drag to move, turn the wheel to zoom once the plot has the focus, double-click for the whole sweep. Two fingers zoom and move.</p>

@@ -1,6 +1,8 @@
 // What quantities, units and bases are called on a plot. Pure.
 
-import { frequency, margin as withSign, quantity as worded, several } from '../numbers.js';
+import { frequency, margin as withSign, parseNumber, quantity as worded, several } from '../numbers.js';
+import { outcomeWord } from './named-runs.js';
+import { goldenReadings, runReadings, spreadAt } from './readings.js';
 
 /** @typedef {import('./trace-set.js').TraceSet} TraceSet */
 /** @typedef {import('./readings.js').Reading} Reading */
@@ -30,16 +32,40 @@ export const valueText = (set, value) => worded(set.quantity !== 'delay' && Math
 export const marginText = (set, reading) => withSign(reading?.margin?.margin, shortUnit(set));
 
 /**
- * The cursor said in words: frequency, the golden run there, and the least margin.
- * @param {number} atHz
- * @param {TraceSet[]} sets
- * @param {(Reading | null)[]} golden
- * @param {({serial: string, margin: number, limit: string} | null)[]} worst one a set
+ * The cursor said in words: frequency, the golden run there, and the least margin of all runs in each set.
+ * @param {TraceSet[]} sets @param {number} atHz
  */
-export function cursorSentence(atHz, sets, golden, worst) {
-  const goldenWords = golden.flatMap((reading, i) => (reading === null || Number.isNaN(reading.value) ? [] : [valueText(sets[i], reading.value)]));
-  const worstWords = worst.flatMap((one, i) => (one === null ? [] : [`least margin ${withSign(one.margin, shortUnit(sets[i]))} of ${one.serial} to ${one.limit}`]));
-  return [frequency(atHz), ...(goldenWords.length > 0 ? [`golden run ${goldenWords.join(', ')}`] : []), ...worstWords].join('; ');
+export function cursorSentence(sets, atHz) {
+  const golden = goldenReadings(sets, atHz).flatMap((reading, i) => (reading === null || Number.isNaN(reading.value) ? [] : [valueText(sets[i], reading.value)]));
+  const worst = sets.flatMap((set) => {
+    const one = spreadAt(set, atHz).worst;
+    return one === null ? [] : [`least margin ${withSign(one.margin, shortUnit(set))} of ${one.serial} to ${one.limit}`];
+  });
+  return [frequency(atHz), ...(golden.length > 0 ? [`golden run ${golden.join(', ')}`] : []), ...worst].join('; ');
+}
+
+/**
+ * A run at the cursor said in words; empty for a run that is not there.
+ * @param {TraceSet[]} sets @param {number} atHz @param {string} runId
+ */
+export function runSentence(sets, atHz, runId) {
+  const [run] = runReadings(sets, atHz, [runId]);
+  if (run === undefined) return '';
+  const values = run.readings.flatMap((reading, i) => (reading === null ? [] : [valueText(sets[i], reading.value)]));
+  const margins = run.readings.flatMap((reading, i) => (reading?.margin ? [`margin ${marginText(sets[i], reading)} to ${reading.margin.limit}`] : []));
+  const name = [run.serial, outcomeWord(run.outcome)].filter((word) => word !== '').join(' ');
+  return `${name}; ${[`${frequency(atHz)}: ${values.join(', ')}`, ...margins].join('; ')}`;
+}
+
+/**
+ * A frequency that was typed, and what is wrong with it.
+ * @param {string} typed @param {import('./spans.js').Span} span that it has to lie in
+ * @returns {{value: number, problem: ''} | {value: null, problem: string}}
+ */
+export function typedFrequency(typed, span) {
+  const parsed = parseNumber(typed, 'Hz');
+  if (parsed.value === null || (parsed.value >= span.min && parsed.value <= span.max)) return parsed;
+  return { value: null, problem: `The sweep runs from ${frequency(span.min)} to ${frequency(span.max)}.` };
 }
 
 /** "92 other runs", "all 96 runs". @param {number} background @param {number} count */

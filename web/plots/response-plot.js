@@ -15,7 +15,7 @@
 // Events: cursor { frequencyHz, golden, runs, read(runIds) } with values and margins there; run-hover { runId } or null;
 // run-pick { runId }; view { view, text } once it rests; basis { basis, levelHz }; handle-move { index, frequencyHz, value, done }.
 
-import { frequency, parseNumber } from '../numbers.js';
+import { frequency } from '../numbers.js';
 import { Element, html, nothing, ownStyles, uniqueId } from '../parts/element.js';
 import { inside, sliderFrequency, stepped } from './cursor-steps.js';
 import { attachGestures, handleUnder, panelAt } from './plot-gestures.js';
@@ -24,13 +24,13 @@ import { describe, plotModel } from './plot-model.js';
 import { PlotPicture } from './plot-picture.js';
 import { cursorOf, toolsOf } from './plot-controls.js';
 import { legendOf, moreOf } from './plot-readout.js';
-import { changedView, frequencyIn, isWhole, printView, wholeView } from './plot-view.js';
-import { cursorSentence, quantityWord } from './plot-words.js';
+import { changedView, frequencyIn, isWhole, wholeView } from './plot-view.js';
+import { ViewKeeper } from './view-keeper.js';
+import { cursorSentence, quantityWord, runSentence, typedFrequency } from './plot-words.js';
 import { outcomeWord } from './named-runs.js';
-import { nearestRun, neighbourRun } from './nearest-run.js';
+import { runBeside, runUnder } from './run-pointing.js';
 import { sharedPainter } from './run-painter.js';
-import { valueAt } from './curve.js';
-import { goldenReadings, runReadings, spreadAt } from './readings.js';
+import { goldenReadings, runReadings } from './readings.js';
 import { logAxis, moved, placeOf, straightAxis, zoomed } from './spans.js';
 import { spanOf } from './value-span.js';
 
@@ -42,13 +42,15 @@ import { spanOf } from './value-span.js';
 sharedPainter();
 await ownStyles(import.meta.url);
 
-const reachPx = 9;
 const calmMs = 150;
+
+/** @param {unknown} a @param {unknown} b */
+const differ = (a, b) => JSON.stringify(a) !== JSON.stringify(b);
 
 export class ResponsePlot extends Element {
   static properties = {
-    upper: { attribute: false }, lower: { attribute: false }, chosen: { attribute: false }, highlight: { attribute: false },
-    basis: {}, levelHz: { attribute: false }, view: { attribute: false }, cursorHz: { attribute: false }, handles: { attribute: false }, caption: {}, tools: { attribute: false },
+    upper: { attribute: false }, lower: { attribute: false }, chosen: { attribute: false, hasChanged: differ }, highlight: { attribute: false },
+    basis: {}, levelHz: { attribute: false }, view: { attribute: false, noAccessor: true }, cursorHz: { attribute: false }, handles: { attribute: false }, caption: {}, tools: { attribute: false },
     switchedOff: { state: true }, hovered: { state: true }, problems: { state: true }, said: { state: true }, hasPercentiles: { state: true }, open: { state: true },
   };
 
@@ -63,6 +65,7 @@ export class ResponsePlot extends Element {
   #frame = 0;
   #calm = 0;
   #id = uniqueId('plot');
+  #keeper = new ViewKeeper();
 
   constructor() {
     super();
@@ -78,8 +81,6 @@ export class ResponsePlot extends Element {
     this.basis = 'asMeasured';
     /** @type {number | null} */
     this.levelHz = null;
-    /** @type {import('./plot-view.js').PlotView} */
-    this.view = wholeView;
     /** @type {number | null} */
     this.cursorHz = null;
     /** @type {import('./cursor-layer.js').Handle[]} */
@@ -95,6 +96,15 @@ export class ResponsePlot extends Element {
     this.said = '';
     this.hasPercentiles = false;
     this.open = false;
+  }
+
+  /** @returns {import('./plot-view.js').PlotView} */
+  get view() {
+    return this.#keeper.view;
+  }
+
+  set view(view) {
+    if (this.#keeper.give(view)) this.requestUpdate('view');
   }
 
   /** The run that is raised over the others. */
@@ -150,7 +160,6 @@ export class ResponsePlot extends Element {
     if (model === null) return html`<p class="soft">There is no curve to show.</p>`;
     const description = describe(model, { quantityWord, frequencyText: frequency, outcomeWord });
     const sets = model.panels.map(({ set }) => set);
-    const sentence = cursorSentence(this.#atHz, sets, goldenReadings(sets, this.#atHz), sets.map((set) => spreadAt(set, this.#atHz).worst));
     return html`
       <figure class="plot">
         <figcaption>${this.caption || description}</figcaption>
@@ -159,7 +168,7 @@ export class ResponsePlot extends Element {
           <div class="plot-frame"><canvas role="img" aria-label=${description}></canvas></div>
           <canvas class="plot-over" aria-hidden="true"></canvas>
         </div>
-        ${cursorOf(this, { id: this.#id, span: this.#frequency, atHz: this.#atHz, sentence })}
+        ${cursorOf(this, { id: this.#id, span: this.#frequency, atHz: this.#atHz, sentence: cursorSentence(sets, this.#atHz) })}
         ${legendOf(this, model, this.#atHz)}
         ${model.notes.map((note) => html`<p class="plot-note">${note}</p>`)}
         ${moreOf(this, model, { id: this.#id, atHz: this.#atHz, open: this.open })}
@@ -182,7 +191,7 @@ export class ResponsePlot extends Element {
   chooseBasis(basis) {
     if (basis === 'levelled') this.levelHz ??= this.#atHz;
     this.basis = basis;
-    this.view = { ...this.view, upper: null, lower: null };
+    this.#look({ ...this.view, upper: null, lower: null });
     this.tell('basis', { basis, levelHz: basis === 'levelled' ? this.levelFrequencyHz : null });
   }
 
@@ -205,14 +214,14 @@ export class ResponsePlot extends Element {
   }
 
   showWhole() {
-    this.view = wholeView;
+    this.#look(wholeView);
     this.#tellView();
   }
 
   /** @param {import('./plot-gestures.js').ViewChange} change */
   changeView(change) {
     if (this.#model === null) return;
-    this.view = changedView(this.view, this.#model, change);
+    this.#look(changedView(this.view, this.#model, change));
     this.#tellView();
   }
 
@@ -279,11 +288,9 @@ export class ResponsePlot extends Element {
 
   /** @param {string} typed @param {'cursor' | 'level'} field */
   #typedFrequency(typed, field) {
-    const { min, max } = this.#model?.frequency ?? { min: 0, max: Infinity };
-    const { value, problem } = parseNumber(typed, 'Hz');
-    const outside = value !== null && (value < min || value > max) ? `The sweep runs from ${frequency(min)} to ${frequency(max)}.` : '';
-    this.problems = { ...this.problems, [field]: problem || outside };
-    return problem || outside ? null : value;
+    const { value, problem } = typedFrequency(typed, this.#model?.frequency ?? { min: 0, max: Infinity });
+    this.problems = { ...this.problems, [field]: problem };
+    return value;
   }
 
   /** @param {number} atHz */
@@ -298,19 +305,12 @@ export class ResponsePlot extends Element {
 
   /** @param {1 | -1} step */
   #walk(step) {
-    const panel = this.#model?.panels[0];
-    if (panel === undefined) return;
-    const next = neighbourRun(this.#candidates(panel), (values) => valueAt(panel.set.frequencyHz, values, this.#atHz), this.raisedRunId, step);
-    if (next !== null) this.hover(next.runId);
+    const next = this.#model && runBeside(this.#model, this.switchedOff, this.#atHz, this.raisedRunId, step);
+    if (next !== null) this.hover(next);
   }
 
   #pickRaised() {
     if (this.raisedRunId !== null) this.tell('run-pick', { runId: this.raisedRunId });
-  }
-
-  /** The curves of a panel that can be pointed at. @param {import('./plot-model.js').PanelModel} panel */
-  #candidates({ set, groups }) {
-    return set.runs.filter((run, i) => !this.switchedOff.has(groups[i] === 255 ? run.runId : 'background'));
   }
 
   /** @param {Place | null} place */
@@ -322,31 +322,27 @@ export class ResponsePlot extends Element {
   #follow() {
     this.#frame = 0;
     const place = this.#pointed;
-    if (place === undefined) return;
-    this.hover(place === null ? null : this.#runUnder(place));
-    const panel = place && panelAt(this.#picture?.panels ?? [], place.y);
+    if (place === undefined || this.#model === null) return;
+    const panels = this.#picture?.panels ?? [];
+    this.hover(place === null ? null : runUnder(this.#model, this.switchedOff, panels, place));
+    const panel = place && panelAt(panels, place.y);
     if (place && panel && place.x >= panel.left && place.x <= panel.right) this.#moveCursor(inside(this.#frequency, panel.frequencyAt(place.x)));
-  }
-
-  /** @param {Place} place */
-  #runUnder(place) {
-    const laid = panelAt(this.#picture?.panels ?? [], place.y);
-    const panel = this.#model?.panels.find(({ key }) => key === laid?.key);
-    if (!laid || !panel || place.x < laid.left || place.x > laid.right) return null;
-    return nearestRun(this.#candidates(panel), panel.set.frequencyHz, laid, laid.frequencyAt, place, reachPx)?.curve.runId ?? null;
   }
 
   #say() {
     const sets = this.#model?.panels.map(({ set }) => set) ?? [];
-    const [raised] = this.raisedRunId === null ? [] : runReadings(sets, this.#atHz, [this.raisedRunId]);
-    const worst = sets.map((_, i) => (raised?.readings[i]?.margin ? { serial: raised.serial, ...raised.readings[i].margin } : null));
-    this.said = raised ? `${raised.serial} ${outcomeWord(raised.outcome)}. ${cursorSentence(this.#atHz, sets, raised.readings, worst).replace('golden run', 'reads')}`
-      : cursorSentence(this.#atHz, sets, goldenReadings(sets, this.#atHz), sets.map((set) => spreadAt(set, this.#atHz).worst));
+    this.said = this.raisedRunId === null ? cursorSentence(sets, this.#atHz) : runSentence(sets, this.#atHz, this.raisedRunId);
+  }
+
+  /** @param {import('./plot-view.js').PlotView} view */
+  #look(view) {
+    this.#keeper.change(view);
+    this.requestUpdate('view');
   }
 
   #tellView() {
     clearTimeout(this.#calm);
-    this.#calm = setTimeout(() => this.tell('view', { view: this.view, text: printView(this.view) }), calmMs);
+    this.#calm = setTimeout(() => this.tell('view', this.#keeper.tell()), calmMs);
   }
 
   #makePicture() {

@@ -7,7 +7,7 @@ import { pictureKey, placingOf, previewBox } from './run-picture.js';
 /** @typedef {import('./run-raster.js').Colour} Colour */
 /** What the layer is to show. @typedef {{scene: Scene, pixelRatio: number, colours: Colour[]}} Wish */
 
-const calmMs = 30;
+const calmMs = 20;
 
 export class RunLayer {
   /** @type {{picture: import('./run-painter.js').Picture, scene: Scene, key: string} | null} */
@@ -20,6 +20,7 @@ export class RunLayer {
   #groups = new Uint8Array(0);
   #versions = 0;
   #drawing = false;
+  #percentilesAsked = false;
   #timer = 0;
   /** Percentile curves of the runs, in the order of `usualPercentiles`; null while there are none. @type {Float64Array[] | null} */
   percentiles = null;
@@ -44,7 +45,6 @@ export class RunLayer {
       this.clear();
       if (runs.length === 0 || frequencyHz.length === 0) return;
       this.#curves = { number: this.painter.keep(runs, frequencyHz.length), version: ++this.#versions, runs, frequencyHz };
-      if (runs.length >= fewestRuns) this.#askPercentiles(this.#curves);
     } else if (groups.some((group, i) => group !== this.#groups[i])) {
       this.#curves.version = ++this.#versions;
     }
@@ -78,6 +78,7 @@ export class RunLayer {
     this.#release();
     this.#curves = null;
     this.#wanted = null;
+    this.#percentilesAsked = false;
     this.percentiles = null;
   }
 
@@ -111,8 +112,11 @@ export class RunLayer {
     if (this.#wanted !== null && this.#wanted.key !== wanted.key) this.#draw();
   }
 
-  /** @param {{number: number, runs: object[]}} curves */
-  async #askPercentiles(curves) {
+  /** Has percentile curves worked out, once. They take the worker's time, so the picture goes first. */
+  async wantPercentiles() {
+    const curves = this.#curves;
+    if (curves === null || this.#percentilesAsked || curves.runs.length < fewestRuns) return;
+    this.#percentilesAsked = true;
     const found = await this.painter.percentiles(curves.number, usualPercentiles);
     if (curves !== this.#curves || found === null) return;
     this.percentiles = found;

@@ -12,7 +12,7 @@ import { onGrid, unionOf } from './curve.js';
 /** @typedef {Float64Array | (number | null)[]} GivenNumbers */
 /** @typedef {{runId: string, serial: string, outcome?: string | null, values: GivenNumbers}} GivenRun */
 /** @typedef {{name: string, side: string, frequencyHz?: GivenNumbers, values?: GivenNumbers, corners?: {frequencyHz: number, value: number}[]}} GivenLimit */
-/** @typedef {{quantity: string, basis?: string, unit?: string, frequencyHz: GivenNumbers, runs: GivenRun[], golden?: GivenRun | null, limits?: GivenLimit[], notes?: {code: string, message: string}[]}} Overlay */
+/** @typedef {{quantity: string, basis?: string, unit?: string, frequencyHz: GivenNumbers, runs: GivenRun[], golden?: GivenRun | null, limits?: GivenLimit[]}} Overlay */
 /** @typedef {{frequencyHz: number[], gainDb: (number | null)[], phaseDeg?: (number | null)[] | null, delaySeconds?: (number | null)[] | null}} Trace */
 
 const usualUnits = new Map([['gain', 'dB'], ['phase', 'deg'], ['delay', 's']]);
@@ -73,7 +73,8 @@ export function limitOf(given) {
 }
 
 /**
- * An overlay of traces, each with a grid of its own, on the union of their grids. A run without the quantity is left out.
+ * An overlay of traces, each with a grid of its own, on the union of their grids. A run without the quantity is left out. Phases
+ * get the whole turns that bring them nearest to the golden run, or the first one, at their lowest common frequency.
  * @param {{runId: string, serial: string, outcome?: string | null, trace: Trace}[]} runs
  * @param {Quantity} quantity
  * @param {{unit?: string, golden?: {runId: string, serial: string, trace: Trace} | null, limits?: GivenLimit[]}} [more]
@@ -84,15 +85,26 @@ export function overlayOfTraces(runs, quantity, more = {}) {
   const having = runs.filter((run) => valuesOf(run.trace, quantity) !== null);
   const frequencyHz = unionOf([...having, ...(golden ? [golden] : [])].map((run) => run.trace.frequencyHz));
   const laid = (/** @type {Trace} */ trace) => onGrid(trace.frequencyHz, numbersOf(valuesOf(trace, quantity) ?? []), frequencyHz);
+  const goldenValues = golden ? laid(golden.trace) : null;
+  const curves = having.map((run) => laid(run.trace));
+  const anchor = goldenValues ?? curves[0];
+  const turned = quantity === 'phase' ? curves.map((values) => nearestTurns(values, anchor)) : curves;
   return {
     quantity,
     basis: 'asMeasured',
     unit: more.unit,
     frequencyHz,
-    runs: having.map((run) => ({ runId: run.runId, serial: run.serial, outcome: run.outcome ?? null, values: laid(run.trace) })),
-    golden: golden ? { runId: golden.runId, serial: golden.serial, values: laid(golden.trace) } : null,
+    runs: having.map((run, i) => ({ runId: run.runId, serial: run.serial, outcome: run.outcome ?? null, values: turned[i] })),
+    golden: golden && goldenValues ? { runId: golden.runId, serial: golden.serial, values: goldenValues } : null,
     limits: more.limits ?? [],
   };
+}
+
+/** @param {Float64Array} degrees @param {Float64Array} anchor */
+function nearestTurns(degrees, anchor) {
+  const common = degrees.findIndex((value, i) => Number.isFinite(value) && Number.isFinite(anchor[i]));
+  const turnsDeg = common < 0 ? 0 : 360 * Math.round((anchor[common] - degrees[common]) / 360);
+  return turnsDeg === 0 ? degrees : degrees.map((value) => value + turnsDeg);
 }
 
 /** @param {Trace} trace @param {Quantity} quantity */

@@ -85,10 +85,11 @@ public sealed class SigningTests(Lab lab)
         await scene.SendAsync("a", 0);
         Assert.Equal(JsonValueKind.Null, (await ShownAsync(scene)).GetProperty("againstSigner").ValueKind);
 
-        await (await scene.Engineer.PatchAsJsonAsync($"/api/devices/{scene.DeviceId}", new { signingExcludesOwnRuns = true })).ShouldBeAsync(HttpStatusCode.OK);
+        var quality = await lab.SignInAsync("quality");
+        await (await quality.PatchAsJsonAsync($"/api/devices/{scene.DeviceId}", new { signingExcludesOwnRuns = true })).ShouldBeAsync(HttpStatusCode.OK);
         Assert.Contains("1 of the lot's runs", (await ShownAsync(scene)).GetProperty("againstSigner").GetString(), StringComparison.Ordinal);
 
-        await (await scene.Engineer.PatchAsJsonAsync($"/api/devices/{scene.DeviceId}", new { signingNeedsQuality = true })).ShouldBeAsync(HttpStatusCode.OK);
+        await (await quality.PatchAsJsonAsync($"/api/devices/{scene.DeviceId}", new { signingNeedsQuality = true })).ShouldBeAsync(HttpStatusCode.OK);
         Assert.Contains("quality", (await ShownAsync(scene)).GetProperty("againstSigner").GetString(), StringComparison.Ordinal);
     }
 

@@ -70,10 +70,3 @@ test('those who do not pass and have no name are counted', () => {
   many.runs.forEach((run, i) => { if (i < 11) run.outcome = 'fail'; });
   assert.match(describe(plotModel(question({ upper: many })), words), /S7 fails, 3 more do not pass\.$/);
 });
-
-test('remarks of the overlays come along once, and not where their limits are left out', () => {
-  const notes = [{ code: 'limitDrawnByReference', message: 'Drawn by the golden run.' }];
-  const of = (basis) => plotModel(question({ upper: gain(3, { notes }), lower: phase({ notes }), basis })).remarks;
-  assert.deepEqual(of('asMeasured'), ['Drawn by the golden run.']);
-  assert.deepEqual(of('levelled'), []);
-});

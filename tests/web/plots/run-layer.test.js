@@ -126,11 +126,18 @@ test('nothing is asked for where no run is in the background', () => {
   assert.ok(made.isSharp);
 });
 
-test('percentiles come from sixty runs on', async () => {
-  const few = layer(59);
-  const many = layer(60);
+test('percentiles come from sixty runs on, are asked for once, and anew for other runs', async () => {
+  const [few, many] = [layer(59), layer(60)];
+  for (const { layer: made } of [few, many]) {
+    made.wantPercentiles();
+    made.wantPercentiles();
+  }
+
   await calm();
   assert.deepEqual([few.painter.percentilesAsked, few.layer.percentiles], [0, null]);
-  assert.equal(many.painter.percentilesAsked, 1);
-  assert.equal(many.layer.percentiles.length, 1);
+  assert.deepEqual([many.painter.percentilesAsked, many.layer.percentiles.length], [1, 1]);
+  many.layer.take(runs(70), gridHz, plain(70));
+  assert.equal(many.layer.percentiles, null);
+  many.layer.wantPercentiles();
+  assert.equal(many.painter.percentilesAsked, 2);
 });

@@ -59,3 +59,16 @@ test('a run without phase is left out of a phase plot, and its grid too', () => 
   assert.deepEqual([...laid.frequencyHz], [100, 200]);
   assert.equal(traceSetOf(laid).unit, 'deg');
 });
+
+test('phases that begin a turn apart are laid beside each other', () => {
+  const trace = (phaseDeg, frequencyHz = [10, 100]) => ({ frequencyHz, gainDb: [0, 0], phaseDeg });
+  const runs = [{ runId: 'a', serial: 'S1', trace: trace([-179, -200]) }, { runId: 'b', serial: 'S2', trace: trace([179, 160]) }];
+  assert.deepEqual(overlayOfTraces(runs, 'phase').runs.map(({ values }) => [...values]), [[-179, -200], [-181, -200]]);
+  const golden = { runId: 'g', serial: 'G', trace: trace([181, 170]) };
+  assert.deepEqual(overlayOfTraces(runs, 'phase', { golden }).runs.map(({ values }) => [...values]), [[181, 160], [179, 160]]);
+});
+
+test('phases of runs that share no frequency stay as they are', () => {
+  const runs = [[10, 100], [1000, 2000]].map((frequencyHz, i) => ({ runId: `${i}`, serial: `S${i}`, trace: { frequencyHz, gainDb: [0, 0], phaseDeg: [400 * i, 400 * i] } }));
+  assert.deepEqual([...overlayOfTraces(runs, 'phase').runs[1].values.slice(2)], [400, 400]);
+});
