@@ -16,7 +16,7 @@ export function headOf(page, lot) {
   return html`
     <div class="page-head">
       <div class="lot-name">
-        <h1>Lot ${lot.number}</h1>
+        <h1 tabindex="-1">Lot ${lot.number}</h1>
         <rl-lot-state state=${lot.state}></rl-lot-state>
         <p class="soft"><a href="/devices/${lot.deviceId}">${lot.partNumber} ${lot.revision}</a>, ${lot.title}. ${several(lot.size, 'unit')}, opened ${opened}${opened === 'just now' ? '' : ' ago'}${lot.lastRunAt === null ? nothing : html`, last run ${when(lot.lastRunAt, age(lot.lastRunAt, Date.now()) === 'just now' ? '' : ' ago')}`}.</p>
       </div>
@@ -55,7 +55,7 @@ function basisOf(condition, device) {
 /** @param {LotPage} page @param {any} lot @param {readonly any[]} units */
 export function evidence(page, lot, units) {
   const { standing, words, pro, con } = evidenceOf(lot, units);
-  const tone = { approve: 'good', concession: 'doubt', not: 'bad' }[standing];
+  const tone = { approve: 'good', concession: 'doubt', testing: '', not: 'bad' }[standing];
   return html`
     <section class="lot-standing ${tone}" aria-label="Recommendation">
       <p class="verdict-word">${words}</p>
@@ -63,32 +63,34 @@ export function evidence(page, lot, units) {
     </section>
     <section class="lot-pro" aria-labelledby="lot-pro">
       <h2 id="lot-pro">For release</h2>
-      ${pro.length === 0 ? html`<p class="small soft">Nothing yet.</p>` : points(page, pro, '\u2713', 'good')}
+      ${pro.length === 0 ? html`<p class="small soft">Nothing yet.</p>` : points(page, pro, 'good', () => '\u2713')}
     </section>
     <section class="lot-con" aria-labelledby="lot-con">
       <h2 id="lot-con">Against release</h2>
-      ${con.length === 0 ? html`<p class="small soft">Nothing.</p>` : points(page, con, '\u2717', 'bad')}
+      ${con.length === 0 ? html`<p class="small soft">Nothing.</p>` : points(page, con, 'bad', ({ blocks }) => (blocks ? '\u2717' : '!'))}
     </section>`;
 }
 
-/** @param {'approve' | 'concession' | 'not'} standing @param {any} lot */
-function nextStep(standing, { stale, counts, size }) {
+/** @param {import('./lot-state.js').Standing} standing @param {any} lot */
+function nextStep(standing, { stale }) {
   if (standing === 'approve')
     return 'Look the evidence through, then sign.';
   if (standing === 'concession')
     return 'Sign it as an approval with concession, and say why.';
   if (stale > 0)
     return 'Verdicts are being evaluated again. This page follows.';
-  return counts.tested < size ? 'Send what is to test; then decide.' : 'Give each unit that does not pass a disposition, or reject the lot.';
+  return standing === 'testing' ? 'Send what is to test; then decide.' : 'Give each unit that does not pass a disposition, or reject the lot.';
 }
 
-/** @param {LotPage} page @param {readonly import('./lot-state.js').Point[]} given @param {string} sign @param {string} tone */
-function points(page, given, sign, tone) {
+/** @param {LotPage} page @param {readonly import('./lot-state.js').Point[]} given @param {string} tone @param {(point: import('./lot-state.js').Point) => string} signOf */
+function points(page, given, tone, signOf) {
   return html`
     <ul class="points ${tone}">
-      ${given.map(({ sentence, code }) => {
-        const filter = filterOf(code);
-        return html`<li><span class="sign" aria-hidden="true">${sign}</span><span>${sentence}${filter === null ? nothing
+      ${given.map((point) => {
+        const { sentence } = point;
+        const filter = filterOf(point.code);
+        const sign = signOf(point);
+        return html`<li class=${sign === '!' ? 'known' : ''}><span class="sign" aria-hidden="true">${sign}</span><span>${sentence}${filter === null ? nothing
           : html` <button type="button" class="plain link" @click=${() => page.filterUnits(filter)}>Show ${filter === 'open' ? 'them' : 'these units'}</button>`}</span></li>`;
       })}
     </ul>`;

@@ -15,7 +15,7 @@ export function signedRecord(decision) {
   const state = stateAfter[decision.decision];
   const { tone, sign, words } = lotStates[state] ?? { tone: '', sign: '', words: decision.decision };
   return html`
-    <section class="lot-signed ${tone}" aria-label="The signed decision">
+    <section class="lot-signed ${tone}" tabindex="-1" aria-label="The signed decision">
       <p class="verdict-word"><span aria-hidden="true">${sign}</span> ${capital(words)} by ${decision.signedBy.name}, ${moment(decision.signedAt)}</p>
       <p class="meaning">“${decision.meaning}”</p>
       ${decision.reason === '' ? nothing : html`<p><strong>Reason:</strong> ${decision.reason}</p>`}

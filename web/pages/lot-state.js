@@ -101,23 +101,28 @@ export function placeOf(worst) {
   return worst.frequencyHz === null || worst.criterion.replaceAll(' ', '\u00a0').includes(at) ? worst.criterion : `${worst.criterion} at ${at}`;
 }
 
-/** @typedef {{ sentence: string, code: string }} Point */
+/** `blocks` stands against an approval; what does not should be known. @typedef {{ sentence: string, code: string, blocks?: boolean }} Point */
+
+/** @typedef {'approve' | 'concession' | 'testing' | 'not'} Standing */
+
+/** @type {Readonly<Record<Standing, string>>} */
+const standingWords = { approve: 'Can be approved', concession: 'Can be approved with concession', testing: 'Still being tested', not: 'Cannot be approved' };
 
 /**
  * What speaks for and against the release of an open lot. What speaks against it and blocks it comes first, in the server's words.
  * @param {any} lot
  * @param {readonly any[]} units
- * @returns {{ standing: 'approve' | 'concession' | 'not', words: string, pro: Point[], con: Point[] }}
+ * @returns {{ standing: Standing, words: string, pro: Point[], con: Point[] }}
  */
 export function evidenceOf(lot, units) {
   const { counts, size, blockers } = lot;
   const codes = blockers.map((/** @type {Point} */ blocker) => blocker.code);
-  const standing = codes.length === 0 ? 'approve' : codes.every((/** @type {string} */ code) => code === 'concessionNeeded') ? 'concession' : 'not';
+  const standing = codes.length === 0 ? 'approve' : codes.every((/** @type {string} */ code) => code === 'concessionNeeded') ? 'concession' : counts.tested < size ? 'testing' : 'not';
   return {
     standing,
-    words: { approve: 'Can be approved', concession: 'Can be approved with concession', not: 'Cannot be approved' }[standing],
+    words: standingWords[standing],
     pro: proOf(lot, units),
-    con: [...blockers, ...doubtsOf(counts, units, size)],
+    con: [...blockers.map((/** @type {Point} */ blocker) => ({ ...blocker, blocks: true })), ...doubtsOf(counts, units, size)],
   };
 }
 

@@ -58,7 +58,7 @@ function marksOf(unit) {
     ...(unit.invalidated > 0 ? [`${several(unit.invalidated, 'run')} invalidated`] : []),
     ...(unit.retests > 0 ? [`${several(unit.retests, 'retest')}`] : []),
   ];
-  return marks.length === 0 ? nothing : html` <span class="marks">${marks.join(' \u00b7 ')}</span>`;
+  return marks.length === 0 ? nothing : html` <span class="marks">${marks.join(' \u00b7 ')}${unit.disposition === null ? nothing : html`<span class="print-only">: ${unit.disposition.reason}</span>`}</span>`;
 }
 
 /** @param {LotPage} page @param {any} lot @param {readonly any[]} units */

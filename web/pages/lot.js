@@ -314,13 +314,15 @@ export class LotPage extends Page {
       say(signing.code === 'lotDecided' ? 'Somebody else has decided this lot meanwhile; the page shows it now.' : signing.sentence, { bad: true });
     else if (await signLot(lot, signing.body, session.person?.name ?? '') !== undefined)
       say(`Your signature stands: lot ${lot.number} is decided.`);
-    void this.load({ anew: true });
+    await this.load({ anew: true });
+    await this.focusIfLost('.lot-signed');
   }
 
   async reopen() {
     if (await reopening(this.lot) !== undefined)
       say(`Lot ${this.lot.number} is open again.`);
-    void this.load({ anew: true });
+    await this.load({ anew: true });
+    await this.focusIfLost('h1');
   }
 
   /** @param {any} unit */
@@ -337,6 +339,13 @@ export class LotPage extends Page {
     if (answer !== undefined)
       say(`The run of unit ${unit.serial} is invalidated. It is kept, and does not count.`);
     void this.load({ anew: true });
+  }
+
+  /** The button that opened a dialog may be gone after what it did. @param {string} selector */
+  async focusIfLost(selector) {
+    await this.updateComplete;
+    if (document.activeElement === null || document.activeElement === document.body)
+      /** @type {HTMLElement | null} */ (this.querySelector(selector))?.focus();
   }
 
   render() {
