@@ -25,7 +25,11 @@ public sealed class TextRulesTests
                 ["title"] = at == "title" ? text : "T",
                 ["limits"] = new JsonArray(new JsonObject
                 {
-                    ["name"] = at == "limits" ? text : "L", ["quantity"] = "gainDb", ["side"] = "upper", ["basis"] = "absolute", ["corners"] = new JsonArray(),
+                    ["name"] = at == "limits" ? text : "L",
+                    ["quantity"] = "gainDb",
+                    ["side"] = "upper",
+                    ["basis"] = "absolute",
+                    ["corners"] = new JsonArray(),
                 }),
                 ["requirements"] = new JsonArray(new JsonObject { ["name"] = at == "requirements" ? text : "R", ["measure"] = "peak", ["output"] = "gainDb" }),
             };

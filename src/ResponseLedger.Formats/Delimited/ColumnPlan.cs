@@ -60,7 +60,7 @@ internal static class ColumnPlan
         foreach (ColumnChoice column in columns)
         {
             if (Normalise(column) is null)
-                {
+            {
                 string quantity = UnitsTaken.Words(column.Quantity);
                 string units = UnitsTaken.Of(column.Quantity);
                 return column.Unit.Trim().Length == 0

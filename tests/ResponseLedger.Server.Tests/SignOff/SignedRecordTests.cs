@@ -28,7 +28,15 @@ public sealed class SignedRecordTests(Lab lab)
         {
             act.Db.Add(new Store.Model.Decision
             {
-                Id = act.NewId(), LotId = scene.LotId, Ordinal = 1, Kind = "reject", Reason = "For a test", Record = record, Sha256 = SHA256.HashData(record), At = act.At, ById = act.ById,
+                Id = act.NewId(),
+                LotId = scene.LotId,
+                Ordinal = 1,
+                Kind = "reject",
+                Reason = "For a test",
+                Record = record,
+                Sha256 = SHA256.HashData(record),
+                At = act.At,
+                ById = act.ById,
             });
             return true;
         });
