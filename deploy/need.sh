@@ -33,6 +33,10 @@ need_dotnet() {
 
 postgres_bin() {
   local candidate
+  if [ -n "${RESPONSELEDGER_POSTGRES_BIN:-}" ] && [ -x "$RESPONSELEDGER_POSTGRES_BIN/initdb" ] && [ -x "$RESPONSELEDGER_POSTGRES_BIN/postgres" ]; then
+    printf '%s\n' "$RESPONSELEDGER_POSTGRES_BIN"
+    return 0
+  fi
   for candidate in $(ls -d /usr/lib/postgresql/*/bin 2>/dev/null | sort -t/ -k5,5nr); do
     if [ -x "$candidate/initdb" ] && [ -x "$candidate/postgres" ]; then
       printf '%s\n' "$candidate"

@@ -134,6 +134,7 @@ function standingWords(run) {
   switch (run.standing) {
     case 'counting': return `counts, ${run.bench}`;
     case 'retest': return `retest, does not count, ${run.bench}`;
+    case 'retestsUsedUp': return `retest beyond the number allowed, does not count, ${run.bench}`;
     default: return `does not count, ${run.bench}`;
   }
 }

@@ -18,6 +18,7 @@ const circumstances = /** @type {Record<string, readonly [string, string]>} */ (
 export function standingWords(run) {
   switch (run.standing) {
     case 'counting': return 'It counts: it is the first valid run of its unit in this condition.';
+    case 'retestsUsedUp': return 'It does not count: the number of retests that the device lets come to count is used up. The unit needs a disposition.';
     case 'retest': return 'It does not count: an earlier valid run of the unit in this condition does. It can come to count only after an engineer has invalidated that one.';
     case 'invalidated': return `It does not count: it is invalidated. Cause: ${run.invalidation.cause}.`;
     default: return `It does not count for a lot: its purpose is ${purposeWords[/** @type {keyof typeof purposeWords} */ (run.purpose)] ?? run.purpose}.`;

@@ -45,6 +45,7 @@ function worstCell({ worst, outcome }) {
 function standingCell(run) {
   switch (run.standing) {
     case 'counting': return 'yes';
+    case 'retestsUsedUp': return html`<span class="soft" title="The device's number of retests is used up.">retest</span>`;
     case 'retest': return html`<span class="soft" title="An earlier valid run of the unit counts.">retest</span>`;
     case 'invalidated': return html`<span title=${run.invalidation.cause}>invalidated</span>`;
     default: return html`<span class="soft">${run.purpose}</span>`;

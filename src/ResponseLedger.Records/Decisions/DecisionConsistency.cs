@@ -16,8 +16,9 @@ internal static class DecisionConsistency
             problems.Add("device.kind", "Expected one of transfer, loop.");
         if (record.Decision != DecisionWord.Approve && string.IsNullOrWhiteSpace(record.Reason))
             problems.Add("reason", "A rejection or a concession needs a reason.");
-        if (record.Units.Count > record.Lot.Size)
-            problems.Add("units", "The lot has more units than its size.");
+        // A unit without any run may be a serial number declared by mistake; a rejection covers whatever was sent.
+        if (record.Decision != DecisionWord.Reject && record.Units.Count(u => u.Runs.Count + u.OtherRuns.Count > 0) > record.Lot.Size)
+            problems.Add("units", "Runs stand for more units than the lot's size.");
         AddRepeated(record.Conditions, c => c.ConditionId, i => $"conditions[{i}].conditionId", problems);
         AddRepeated(record.Conditions, c => c.Name, i => $"conditions[{i}].name", problems);
         AddRepeated(record.Units, u => u.UnitId, i => $"units[{i}].unitId", problems);

@@ -7,6 +7,7 @@ using ResponseLedger.Server.Masks;
 using ResponseLedger.Server.People;
 using ResponseLedger.Store;
 using ResponseLedger.Store.Acts;
+using ResponseLedger.Store.Intake;
 using ResponseLedger.Store.Judging;
 using ResponseLedger.Store.Model;
 using ResponseLedger.Store.Reevaluation;
@@ -53,6 +54,7 @@ internal static class GoldenRuns
             {
                 candidate.Id,
                 candidate.DeviceId,
+                candidate.Purpose,
                 Invalidated = act.Db.RunInvalidations.Any(i => i.RunId == candidate.Id),
                 Assigned = act.Db.RunAssignments.Where(a => a.RunId == candidate.Id).OrderByDescending(a => a.Number).First(),
                 ReadingId = act.Db.Readings.Where(r => r.RunId == candidate.Id).OrderByDescending(r => r.Number).Select(r => r.Id).First(),
@@ -60,6 +62,8 @@ internal static class GoldenRuns
             ?? throw new RefusedException(new FieldRefused("runId", "There is no run under this id."));
         if (run.DeviceId != deviceId)
             throw new RefusedException(new FieldRefused("runId", "This run is of another device; choose a run of this one."));
+        if (run.Purpose is RunPurposes.Through or RunPurposes.Check)
+            throw new RefusedException(new FieldRefused("runId", $"This is a {run.Purpose} run, which shows the bench and no unit; choose a golden, production or study run."));
         if (run.Invalidated)
             throw new RefusedException(new GoldenRunInvalidated());
 

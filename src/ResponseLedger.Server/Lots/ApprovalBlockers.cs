@@ -28,7 +28,7 @@ internal static class ApprovalBlockers
     /// <summary>What stands against an approval of an open lot, plain or under concession.</summary>
     public static IReadOnlyList<Blocker> Of(int size, IReadOnlyList<LotCondition> conditions, LotTally tally, bool needsTwoSigners, bool underConcession)
     {
-        var blockers = new List<Blocker>(AnyDecision(size, tally, needsTwoSigners));
+        var blockers = new List<Blocker>(AnyDecision(tally, needsTwoSigners));
         var unreleased = conditions.Where(c => c.MaskId is null).Select(c => $"\"{c.Name}\"").ToList();
         if (unreleased.Count > 0)
         {
@@ -37,7 +37,14 @@ internal static class ApprovalBlockers
                 $"No mask is released for the condition{(unreleased.Count > 1 ? "s" : "")} {string.Join(", ", unreleased)}, so the lot can only be rejected. Release one first."));
         }
 
-        if (tally.Cleared + tally.Conceded < size)
+        if (tally.Beyond(size) > 0)
+        {
+            blockers.Add(new Blocker(
+                "moreUnitsThanSize",
+                $"The lot has {tally.Units - tally.Unsent} units and a size of {size}. Reassign the runs that do not belong here, and give units that were declared by mistake the disposition return."));
+        }
+
+        if (tally.ClearedOf(size) + tally.Conceded < size)
             blockers.Add(new Blocker(UnitsNotPassed, NotPassed(size, tally)));
         if (!underConcession && tally.Conceded > 0)
             blockers.Add(new Blocker(ConcessionNeeded, $"{Units(tally.Conceded)} under concession: approve with concession instead."));
@@ -47,21 +54,19 @@ internal static class ApprovalBlockers
     }
 
     /// <summary>What stands against every decision, a rejection too.</summary>
-    public static IReadOnlyList<Blocker> AnyDecision(int size, LotTally tally, bool needsTwoSigners)
+    public static IReadOnlyList<Blocker> AnyDecision(LotTally tally, bool needsTwoSigners)
     {
         var blockers = new List<Blocker>();
         if (needsTwoSigners)
             blockers.Add(new Blocker("needsTwoSigners", "The device asks for two signers, which this version cannot take."));
         if (tally.Stale > 0)
             blockers.Add(new Blocker("verdictsStale", $"{tally.Stale} verdict{(tally.Stale > 1 ? "s are" : " is")} still those of an earlier mask or golden run. They are being evaluated again; wait until that is done."));
-        if (tally.Units > size)
-            blockers.Add(new Blocker("moreUnitsThanSize", $"The lot has runs of {tally.Units} units and a size of {size}. Reassign the runs that do not belong here."));
         return blockers;
     }
 
     private static string NotPassed(int size, LotTally tally)
     {
-        var open = size - tally.Cleared - tally.Conceded;
+        var open = size - tally.ClearedOf(size) - tally.Conceded;
         var head = $"{open} of {size} units {(open == 1 ? "neither passes nor is" : "neither pass nor are")} withdrawn";
 
         // A unit with a disposition is counted by its outcome still, so the parts tell what is open only while there is none.

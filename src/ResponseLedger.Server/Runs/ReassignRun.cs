@@ -38,6 +38,7 @@ internal sealed class ReassignRun(ActRunner acts, RunViews views, JudgingMateria
         if (unitId == before.UnitId && lotId == before.LotId && conditionId == before.ConditionId)
             throw new RefusedException(new NothingChanges());
         await RefuseSameFilesAsync(act.Db, run, unitId, lotId, cancellationToken);
+        await GoldenInForce.RefuseAsync(act.Db, id, cancellationToken);
 
         var reason = asked.Reason!.Trim();
         act.Db.RunAssignments.Add(new RunAssignment

@@ -14,8 +14,8 @@ internal sealed record LotIsDecided(string Lot)
 internal sealed record AlreadyInvalidated()
     : Refusal(StatusCodes.Status409Conflict, "alreadyInvalidated", "The run is invalidated already, with its cause; that stands.");
 
-internal sealed record RetestsUsedUp(int Allowed)
-    : Refusal(StatusCodes.Status409Conflict, "retestsUsedUp", $"The device lets {Allowed} retests of a unit in a condition come to count, and they are used up. The unit needs a disposition.");
+internal sealed record RunIsGolden(string Condition)
+    : Refusal(StatusCodes.Status409Conflict, "goldenInForce", $"This is the golden run of the condition \"{Condition}\", and runs are judged by it. Set another golden run first, then change this one.");
 
 internal sealed record NothingChanges()
     : Refusal(StatusCodes.Status409Conflict, "nothingChanges", "The run stands at this unit, lot and condition already.");

@@ -9,7 +9,7 @@ using ResponseLedger.Store.Queries;
 namespace ResponseLedger.Server.Runs;
 
 /// <summary>
-/// A run as the API shows it. Standing is counting, retest, invalidated or notProduction. Outcome and worst are those of the verdict on
+/// A run as the API shows it. Standing is counting, retest, retestsUsedUp, invalidated or notProduction. Outcome and worst are those of the verdict on
 /// the basis that holds; while there is none, the reason is noReleasedMask, or pending while runs are evaluated again.
 /// </summary>
 internal sealed record RunView(

@@ -14,7 +14,7 @@ namespace ResponseLedger.Server.SignOff;
 internal static class SigningRules
 {
     public static IReadOnlyList<Blocker> Against(DecisionWord word, Lot lot, LotStanding standing, DeviceSetting setting) => word == DecisionWord.Reject
-        ? ApprovalBlockers.AnyDecision(lot.Size, standing.Tally, setting.SigningNeedsTwo)
+        ? ApprovalBlockers.AnyDecision(standing.Tally, setting.SigningNeedsTwo)
         : ApprovalBlockers.Of(lot.Size, standing.Conditions, standing.Tally, setting.SigningNeedsTwo, word == DecisionWord.ApproveWithConcession);
 
     public static Recommendation Recommend(Lot lot, LotStanding standing, DeviceSetting setting)

@@ -78,8 +78,16 @@ public sealed record LotCondition(Guid Id, string Name, Guid? MaskId, int? MaskR
 /// <param name="Cleared">Units that pass or are withdrawn.</param>
 /// <param name="Conceded">Units that do not pass and are under concession.</param>
 /// <param name="Stale">Counting runs whose verdict on the basis in force is pending.</param>
-public sealed record LotTally(int Units, int Tested, int Passed, int Failed, int Inconclusive, int Withdrawn, int Retests, int Cleared, int Conceded, int Stale)
+/// <param name="Unsent">Units that were declared, have no run and are withdrawn: serial numbers declared by mistake, or units lost before the test.</param>
+public sealed record LotTally(
+    int Units, int Tested, int Passed, int Failed, int Inconclusive, int Withdrawn, int Retests, int Cleared, int Conceded, int Stale, int Unsent)
 {
+    /// <summary>Units beyond a lot's size that no withdrawn declaration without a run explains.</summary>
+    public int Beyond(int size) => Math.Max(0, Units - Unsent - size);
+
+    /// <summary>Units of the lot's size that pass or are withdrawn; declarations beyond the size that never had a run stand for no unit.</summary>
+    public int ClearedOf(int size) => Cleared - Math.Min(Unsent, Math.Max(0, Units - size));
+
     /// <summary>The same counts out of the rows of the units.</summary>
     public static LotTally Of(IReadOnlyCollection<UnitStanding> units)
     {
@@ -94,6 +102,7 @@ public sealed record LotTally(int Units, int Tested, int Passed, int Failed, int
             units.Sum(u => u.Retests),
             units.Count(u => u.Passes || u.IsWithdrawn),
             units.Count(u => u.Disposition?.Kind == UnitDispositionInForce.Concession),
-            units.Sum(u => u.Stale));
+            units.Sum(u => u.Stale),
+            units.Count(u => u.Runs == 0 && u.IsWithdrawn));
     }
 }

@@ -37,7 +37,7 @@ public static class LotHeads
                 from required q where q.lot_id = c.id),
                t.units::int, t.tested::int, t.passed::int, t.failed::int, t.inconclusive::int, t.withdrawn::int, t.retests::int,
                t.cleared::int, t.conceded::int, t.stale::int, s.signing_needs_two,
-               coalesce(f.tested, 0), coalesce(f.passed, 0), w.margins, r.last_at
+               coalesce(f.tested, 0), coalesce(f.passed, 0), w.margins, r.last_at, t.unsent::int
         from chosen c
         join lateral (select title, signing_needs_two from device_setting where device_id = c.device_id order by number desc limit 1) s on true
         left join (
@@ -45,7 +45,7 @@ public static class LotHeads
                    count(*) filter (where outcome in (2, 4)) as failed, count(*) filter (where outcome = 3) as inconclusive,
                    count(*) filter (where withdrawn) as withdrawn, sum(retests) as retests,
                    count(*) filter (where passes or withdrawn) as cleared, count(*) filter (where disposition = 'concession') as conceded,
-                   sum(stale) as stale
+                   sum(stale) as stale, count(*) filter (where withdrawn and runs = 0) as unsent
             from standing group by lot_id) t on t.lot_id = c.id
         left join first_pass f on f.lot_id = c.id
         left join worst w on w.lot_id = c.id
@@ -139,10 +139,10 @@ public static class LotHeads
             row.GetFieldValue<byte[]>(13)),
         row.IsDBNull(18) ? [] : JsonSerializer.Deserialize<LotCondition[]>(row.GetString(18))!,
         row.IsDBNull(19)
-            ? new LotTally(0, 0, 0, 0, 0, 0, 0, 0, 0, 0)
+            ? new LotTally(0, 0, 0, 0, 0, 0, 0, 0, 0, 0, 0)
             : new LotTally(
                 row.GetInt32(19), row.GetInt32(20), row.GetInt32(21), row.GetInt32(22), row.GetInt32(23), row.GetInt32(24),
-                row.GetInt32(25), row.GetInt32(26), row.GetInt32(27), row.GetInt32(28)),
+                row.GetInt32(25), row.GetInt32(26), row.GetInt32(27), row.GetInt32(28), row.GetInt32(34)),
         row.GetBoolean(29),
         new FirstPass(row.GetInt32(30), row.GetInt32(31)),
         row.IsDBNull(32) ? [] : JsonSerializer.Deserialize<LotMargin[]>(row.GetString(32))!,

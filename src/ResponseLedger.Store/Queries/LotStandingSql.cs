@@ -43,12 +43,12 @@ internal static class LotStandingSql
         """
         required as materialized (
             select c.id as lot_id, k.id as condition_id, k.ordinal, k.name, m.mask_id, m.number as mask_revision,
-                   g.run_id as golden_run_id, g.reading_id as golden_reading_id, b.id as basis_id
+                   g.run_id as golden_run_id, g.reading_id as golden_reading_id, b.id as basis_id, s.retests_allowed
             from chosen c
             join condition k on k.device_id = c.device_id
             left join lateral (select mask_id, number from mask_revision where condition_id = k.id order by number desc limit 1) m on true
             left join lateral (select run_id, reading_id from golden_choice where condition_id = k.id order by number desc limit 1) g on true
-            left join lateral (select decision_rule from device_setting where device_id = c.device_id order by number desc limit 1) s on true
+            left join lateral (select decision_rule, retests_allowed from device_setting where device_id = c.device_id order by number desc limit 1) s on true
             left join lateral (
                 select id from basis
                 where condition_id = k.id and mask_id = m.mask_id and golden_reading_id is not distinct from g.reading_id
@@ -57,7 +57,7 @@ internal static class LotStandingSql
             where c.decision_id is null
             union all
             select c.id, k.id, k.ordinal, k.name, (pinned ->> 'maskRevisionId')::uuid, (pinned ->> 'maskRevision')::int,
-                   (pinned ->> 'goldenRunId')::uuid, (pinned ->> 'goldenReadingId')::uuid, null
+                   (pinned ->> 'goldenRunId')::uuid, (pinned ->> 'goldenReadingId')::uuid, null, null
             from chosen c
             cross join lateral json_array_elements(c.conditions) pinned
             join condition k on k.id = (pinned ->> 'conditionId')::uuid
@@ -66,7 +66,8 @@ internal static class LotStandingSql
         ordered as materialized (
             select a.lot_id, a.unit_id, a.condition_id, a.run_id, c.decision_id, r.received_no, r.at, r.measured_at, r.by_id,
                    i.run_id is not null as invalidated, i.cause, i.reason,
-                   row_number() over (partition by a.lot_id, a.unit_id, a.condition_id order by i.run_id is not null, r.received_no) as place
+                   row_number() over (partition by a.lot_id, a.unit_id, a.condition_id order by i.run_id is not null, r.received_no) as place,
+                   count(i.run_id) over (partition by a.lot_id, a.unit_id, a.condition_id order by r.received_no) as spent
             from chosen c
             join run_assignment a on a.lot_id = c.id
             join run r on r.id = a.run_id and r.purpose = 'production'
@@ -81,7 +82,7 @@ internal static class LotStandingSql
             join lateral (select id from reading where run_id = o.run_id order by number desc limit 1) rd on true
             left join lateral (
                 select * from verdict where reading_id = rd.id and basis_id = q.basis_id order by at desc, id desc limit 1) v on true
-            where o.decision_id is null and o.place = 1 and not o.invalidated
+            where o.decision_id is null and o.place = 1 and not o.invalidated and o.spent <= coalesce(q.retests_allowed, o.spent)
             union all
             select o.lot_id, o.unit_id, o.condition_id, o.run_id, o.at, o.measured_at, pin.reading_id,
                    v.id, v.basis_id, v.outcome, v.worst_index, v.margins, v.outcomes, v.frequencies_hz

@@ -68,6 +68,9 @@ public static class RunStandings
     /// <summary>A valid production run behind an earlier one.</summary>
     public const string Retest = "retest";
 
+    /// <summary>A retest beyond the number that the device lets come to count.</summary>
+    public const string RetestsUsedUp = "retestsUsedUp";
+
     /// <summary>An engineer found an assignable cause.</summary>
     public const string Invalidated = "invalidated";
 

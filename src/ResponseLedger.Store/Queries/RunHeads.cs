@@ -27,6 +27,12 @@ public static class RunHeads
                         where ea.lot_id = a.lot_id and ea.unit_id = a.unit_id and ea.condition_id = a.condition_id
                           and not exists (select 1 from run_assignment el where el.run_id = ea.run_id and el.number > ea.number)
                           and not exists (select 1 from run_invalidation ei where ei.run_id = ea.run_id)) then 'retest'
+                    when ds.retests_allowed < (
+                        select count(*) from run_assignment sa
+                        join run e on e.id = sa.run_id and e.purpose = 'production' and e.received_no < r.received_no
+                        join run_invalidation si on si.run_id = sa.run_id
+                        where sa.lot_id = a.lot_id and sa.unit_id = a.unit_id and sa.condition_id = a.condition_id
+                          and not exists (select 1 from run_assignment sl where sl.run_id = sa.run_id and sl.number > sa.number)) then 'retestsUsedUp'
                     else 'counting' end,
                case when decided.id is null then m.mask_id is not null else pinned.basis_id is not null end
         from run r
@@ -51,7 +57,7 @@ public static class RunHeads
             where pin.decision_id = decided.id and pin.condition_id = a.condition_id limit 1) pinned on true
         left join lateral (select mask_id from mask_revision where condition_id = a.condition_id order by number desc limit 1) m on true
         left join lateral (select reading_id from golden_choice where condition_id = a.condition_id order by number desc limit 1) gc on true
-        left join lateral (select decision_rule from device_setting where device_id = r.device_id order by number desc limit 1) ds on true
+        left join lateral (select decision_rule, retests_allowed from device_setting where device_id = r.device_id order by number desc limit 1) ds on true
         left join lateral (
             select id from basis
             where decided.id is null and condition_id = a.condition_id and mask_id = m.mask_id

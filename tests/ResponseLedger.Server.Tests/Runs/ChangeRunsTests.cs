@@ -51,7 +51,30 @@ public sealed class ChangeRunsTests(Lab lab)
         var first = await scene.AcceptedAsync("S1_1.csv", RunScene.Csv(2, "1"));
         var second = await scene.AcceptedAsync("S1_2.csv", RunScene.Csv(2, "2"));
         await (await scene.Engineer.PostAsJsonAsync($"/api/runs/{first}/invalidation", Cause)).ShouldBeAsync(HttpStatusCode.Created);
-        await (await scene.Engineer.PostAsJsonAsync($"/api/runs/{second}/invalidation", Cause)).ShouldRefuseAsync(HttpStatusCode.Conflict, "retestsUsedUp");
+        Assert.Equal("counting", await StandingAsync(scene, second));
+
+        // A retest that turns out bad is taken out all the same; the next one is stored and does not count.
+        await (await scene.Engineer.PostAsJsonAsync($"/api/runs/{second}/invalidation", Cause)).ShouldBeAsync(HttpStatusCode.Created);
+        var third = await scene.AcceptedAsync("S1_3.csv", RunScene.Csv(0, "3"));
+        Assert.Equal("retestsUsedUp", await StandingAsync(scene, third));
+        var lot = await (await scene.Engineer.GetAsync($"/api/lots/{scene.LotId}")).ShouldBeAsync(HttpStatusCode.OK);
+        Assert.Equal((1, 0, 0), (lot.GetProperty("counts").GetProperty("units").GetInt32(), lot.GetProperty("counts").GetProperty("tested").GetInt32(), lot.GetProperty("counts").GetProperty("passed").GetInt32()));
+
+        await (await scene.Engineer.PatchAsJsonAsync($"/api/devices/{scene.DeviceId}", new { retestsAllowed = 2 })).ShouldBeAsync(HttpStatusCode.OK);
+        Assert.Equal("counting", await StandingAsync(scene, third));
+    }
+
+    [Fact]
+    public async Task A_golden_run_in_force_is_neither_invalidated_nor_moved_until_another_takes_its_place()
+    {
+        var scene = await RunScene.NewAsync(lab);
+        var golden = await scene.AcceptedAsync("G1.csv", RunScene.Csv(0));
+        var next = await scene.AcceptedAsync("G2.csv", RunScene.Csv(0.25, "2"));
+        await (await scene.Engineer.PutAsJsonAsync($"/api/devices/{scene.DeviceId}/golden", new { runId = golden, reason = "first" })).ShouldBeAsync(HttpStatusCode.OK);
+        await (await scene.Engineer.PostAsJsonAsync($"/api/runs/{golden}/invalidation", Cause)).ShouldRefuseAsync(HttpStatusCode.Conflict, "goldenInForce");
+        await (await scene.Engineer.PostAsJsonAsync($"/api/runs/{golden}/reassignment", new { serial = "G9", reason = "label" })).ShouldRefuseAsync(HttpStatusCode.Conflict, "goldenInForce");
+        await (await scene.Engineer.PutAsJsonAsync($"/api/devices/{scene.DeviceId}/golden", new { runId = next, reason = "better" })).ShouldBeAsync(HttpStatusCode.OK);
+        await (await scene.Engineer.PostAsJsonAsync($"/api/runs/{golden}/invalidation", Cause)).ShouldBeAsync(HttpStatusCode.Created);
     }
 
     [Fact]
@@ -119,4 +142,7 @@ public sealed class ChangeRunsTests(Lab lab)
             Assert.True(problem.GetProperty("errors").TryGetProperty(field, out _), problem.ToString());
         }
     }
+
+    private static async Task<string> StandingAsync(RunScene scene, string runId)
+        => (await (await scene.Engineer.GetAsync($"/api/runs/{runId}")).ShouldBeAsync(HttpStatusCode.OK)).GetProperty("standing").GetString()!;
 }

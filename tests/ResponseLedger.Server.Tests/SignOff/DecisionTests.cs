@@ -154,7 +154,7 @@ public sealed class DecisionTests(Lab lab)
     }
 
     [Fact]
-    public async Task A_lot_with_more_units_than_its_size_is_not_decided()
+    public async Task A_lot_with_more_units_than_its_size_is_not_approved_until_a_mistaken_declaration_is_returned()
     {
         var scene = await LotScene.NewAsync(lab, 1, ["a"]);
         var stray = await scene.SendAsync("a", 0);
@@ -171,8 +171,13 @@ public sealed class DecisionTests(Lab lab)
             }, CancellationToken.None);
         }
 
-        await (await scene.DecideAsync("reject")).ShouldRefuseAsync(HttpStatusCode.Conflict, "moreUnitsThanSize");
+        await (await scene.DecideAsync("approve")).ShouldRefuseAsync(HttpStatusCode.Conflict, "moreUnitsThanSize");
         Assert.NotEmpty(stray);
+
+        // A serial number that was declared by mistake is returned, and stands for no unit of the lot any more.
+        await (await scene.DispositionAsync("one too many", "return")).ShouldBeAsync(HttpStatusCode.Created);
+        Assert.Empty(await scene.BlockersAsync());
+        await (await scene.DecideAsync("approve")).ShouldBeAsync(HttpStatusCode.Created);
     }
 
     [Theory]
