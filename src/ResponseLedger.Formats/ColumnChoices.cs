@@ -14,6 +14,8 @@ public sealed record ColumnChoice(int Column, ColumnQuantity Quantity, string Un
 /// <param name="Parameter">Touchstone: the parameter, such as <c>S31</c> or <c>S10,1</c>; null for the default.</param>
 public sealed record ColumnChoices(IReadOnlyList<ColumnChoice> Columns, string? Parameter)
 {
+    private const char Unreadable = '\uFFFD';
+
     private const int LargestColumn = 4096;
 
     /// <summary>Reads choices from JSON: an array of <c>{column, quantity, unit}</c>, or an object with <c>columns</c> and <c>parameter</c>.</summary>
@@ -50,6 +52,11 @@ public sealed record ColumnChoices(IReadOnlyList<ColumnChoice> Columns, string? 
                     }
 
                     parameter = TextOf(named);
+                    if (parameter.Any(c => char.IsControl(c) || c == Unreadable))
+                    {
+                        problem = "The parameter holds characters that no parameter has; send for example \"S21\".";
+                        return false;
+                    }
                 }
 
                 if (!list.TryGetProperty("columns", out JsonElement inner) || inner.ValueKind == JsonValueKind.Null)
@@ -156,7 +163,7 @@ public sealed record ColumnChoices(IReadOnlyList<ColumnChoice> Columns, string? 
         }
         catch (InvalidOperationException)
         {
-            return "\uFFFD";
+            return Unreadable.ToString();
         }
     }
 
