@@ -21,6 +21,20 @@ internal sealed class TokenScheme(
 
     private const string Lead = "Bearer ";
 
+    // Asked at every request of a bench, so the question is put together once.
+    private static readonly Func<ResponseLedgerContext, Guid, CancellationToken, Task<Found?>> FindAsync = EF.CompileAsyncQuery(
+        (ResponseLedgerContext db, Guid id, CancellationToken cancellationToken) => db.BenchTokens
+            .AsNoTracking()
+            .Where(t => t.Id == id)
+            .Select(t => new Found(
+                t.Name,
+                t.SecretHash,
+                t.Scopes,
+                t.ExpiresAt,
+                t.BenchId ?? db.TokenBindings.Where(b => b.TokenId == id).Select(b => (Guid?)b.BenchId).FirstOrDefault(),
+                db.TokenRevocations.Any(r => r.TokenId == id)))
+            .SingleOrDefault());
+
     protected override async Task<AuthenticateResult> HandleAuthenticateAsync()
     {
         var header = Request.Headers.Authorization.ToString();
@@ -29,18 +43,7 @@ internal sealed class TokenScheme(
         if (!TokenSecret.TryRead(header.AsSpan(Lead.Length).Trim(), out var id, out var hash))
             return AuthenticateResult.Fail("This is no bench token.");
 
-        var found = await db.BenchTokens.AsNoTracking()
-            .Where(t => t.Id == id)
-            .Select(t => new
-            {
-                t.Name,
-                t.SecretHash,
-                t.Scopes,
-                t.ExpiresAt,
-                BenchId = t.BenchId ?? db.TokenBindings.Where(b => b.TokenId == id).Select(b => (Guid?)b.BenchId).FirstOrDefault(),
-                Revoked = db.TokenRevocations.Any(r => r.TokenId == id),
-            })
-            .SingleOrDefaultAsync(Context.RequestAborted);
+        var found = await FindAsync(db, id, Context.RequestAborted);
         if (found is null || !CryptographicOperations.FixedTimeEquals(found.SecretHash, hash))
             return AuthenticateResult.Fail("There is no such token.");
         if (found.Revoked || found.ExpiresAt <= time.GetUtcNow())
@@ -57,4 +60,6 @@ internal sealed class TokenScheme(
             identity.AddClaim(new Claim(CurrentActor.BenchClaim, bench.ToString()));
         return AuthenticateResult.Success(new AuthenticationTicket(new ClaimsPrincipal(identity), Name));
     }
+
+    private sealed record Found(string Name, byte[] SecretHash, string[] Scopes, DateTimeOffset ExpiresAt, Guid? BenchId, bool Revoked);
 }

@@ -21,7 +21,7 @@ internal static class EngineBenchmark
         if (!MaskDocument.TryParse(Encoding.UTF8.GetBytes(BenchDevice.Mask), out var document, out var problems))
             throw new InvalidOperationException(problems[0].Sentence);
         var mask = document.Mask;
-        var (warmUp, rounds) = (effort.Of(2_000, 500), effort.Of(5_000, 500));
+        var (warmUp, rounds) = (effort.Of(2_000, 300), effort.Of(5_000, 300));
         var (frequencyHz, gainDb, phaseDeg) = SweepFile.Curve(Points, 1);
 
         // A sweep keeps its unwrapped phase once it is asked for, so each round has one that was never asked.

@@ -19,17 +19,21 @@ internal static class ReadinessBenchmark
             first.Add(await StartAsync(folder, Quit.Asked));
             for (var i = 0; i < effort.Of(7, 1); i++)
                 existing.Add(await StartAsync(folder, Quit.Asked));
-            for (var i = 0; i < effort.Of(3, 1); i++)
+            for (var i = 0; i < effort.Of(3, 0); i++)
             {
                 await StartAsync(folder, Quit.Killed);
                 afterDeath.Add(await StartAsync(folder, Quit.Asked));
             }
 
-            report.Table(
-                ["process start to /health/ready 200 (goal on an existing store: under 5 s)", "starts", "median ms", "slowest ms"],
+            string[][] rows =
+            [
                 Row("first start: cluster, tables, first manager", first),
                 Row("existing store", existing),
-                Row("existing store, after the server's kill -9", afterDeath));
+                .. afterDeath.Count == 0 ? Array.Empty<string[]>() : [Row("existing store, after the server's kill -9", afterDeath)],
+            ];
+            report.Table(
+                ["process start to /health/ready 200 (goal on an existing store: under 5 s)", "starts", "median ms", "slowest ms"],
+                rows);
         }
         catch (InvalidOperationException failure)
         {

@@ -30,12 +30,12 @@ internal static class ParallelUploads
 
     public static async Task RunAsync(BenchLab lab, Report report, Effort effort)
     {
-        var each = effort.Of(60, 8);
+        var each = effort.Of(60, 4);
         var device = await BenchDevice.NewAsync(lab);
         var warm = await device.NewLotAsync(10_000);
-        await SendAllAsync(lab, device, warm, effort.Of(20, 4), shared: false, seed: 500_000);
+        await SendAllAsync(lab, device, warm, effort.Of(20, 2), shared: false, seed: 500_000);
         var bare = await BareTransaction.OfAsync(lab, device, warm);
-        await InsertAllAsync(lab, bare, effort.Of(20, 4), "warm");
+        await InsertAllAsync(lab, bare, effort.Of(20, 2), "warm");
 
         var own = await device.NewLotAsync(10_000);
         var ownSent = await SendAllAsync(lab, device, own, each, shared: false, seed: 600_000);

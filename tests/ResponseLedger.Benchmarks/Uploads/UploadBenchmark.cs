@@ -15,8 +15,8 @@ internal static class UploadBenchmark
     {
         var device = await BenchDevice.NewAsync(lab);
         var lotId = await device.NewLotAsync(10_000);
-        var warmUp = effort.Of(700, 40);
-        var rounds = effort.Of(500, 60);
+        var warmUp = effort.Of(700, 15);
+        var rounds = effort.Of(500, 25);
         await device.SendAsync(lab.Bench, lotId, "first", SweepFile.Csv(Points, -1));
         var bare = await BareTransaction.OfAsync(lab, device, lotId);
 

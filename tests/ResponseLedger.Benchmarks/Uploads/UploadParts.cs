@@ -20,7 +20,7 @@ internal static class UploadParts
 {
     public static async Task RunAsync(BenchLab lab, BenchDevice device, Guid lotId, Samples whole, Report report, Effort effort)
     {
-        var (warmUp, rounds) = (effort.Of(200, 40), effort.Of(500, 60));
+        var (warmUp, rounds) = (effort.Of(200, 10), effort.Of(500, 25));
         var content = SweepFile.Csv(UploadBenchmark.Points, 77_777);
         var contexts = lab.Services.GetRequiredService<IDbContextFactory<ResponseLedgerContext>>();
         CurrentBasis current;

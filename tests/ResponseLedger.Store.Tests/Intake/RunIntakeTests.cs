@@ -82,6 +82,27 @@ public sealed class RunIntakeTests
             await after.Units.CountAsync(Cancellation), await after.LedgerEntries.CountAsync(Cancellation)));
     }
 
+    [Fact]
+    public async Task A_connection_cut_around_the_commit_leaves_the_run_taken_exactly_once_with_its_entry_in_the_queue()
+    {
+        await using var store = await OpenAsync();
+        for (var at = 1; ; at++)
+        {
+            var faults = new Faults(at, transient: true);
+            var result = await TakeAsync(store, Order(), IntakeFile.Of($"S{at}.csv", $"S{at}", File($"{at},0")), faults);
+            await using var db = Contexts.Open(store.ServerConnectionString);
+            Assert.Equal((IntakeOutcome.Accepted, at, at, at, at), (
+                result.Outcome, await db.Runs.CountAsync(Cancellation), await db.Curves.CountAsync(Cancellation),
+                await db.LedgerEntries.CountAsync(e => e.Kind == "run.received", Cancellation), await db.LedgerQueue.CountAsync(Cancellation)));
+            Assert.True(await db.Runs.AnyAsync(r => r.Id == result.RunId, Cancellation), $"cut {at}: another run was told than the one that is kept");
+            if (!faults.Struck)
+            {
+                Assert.True(at > 2, "A commit was to be cut before and after it took effect.");
+                return;
+            }
+        }
+    }
+
     private static byte[] File(string secondRow) => Encoding.UTF8.GetBytes(string.Create(CultureInfo.InvariantCulture, $"frequency_hz,real,imag\n10,1,0\n20,{secondRow}\n"));
 
     private async Task<TestStore> OpenAsync()
@@ -96,9 +117,9 @@ public sealed class RunIntakeTests
     private IntakeOrder Order(double? noiseFloorDb = null)
         => new(rows.Device.Id, rows.Condition.Id, "standard", rows.Lot.Id, "L1", rows.Bench.Id, "Bench 1", RunPurposes.Production, NoiseFloorDb: noiseFloorDb);
 
-    private static async Task<IntakeResult> TakeAsync(TestStore store, IntakeOrder order, IntakeFile file)
+    private static async Task<IntakeResult> TakeAsync(TestStore store, IntakeOrder order, IntakeFile file, Faults? faults = null)
     {
-        await using var contexts = new Contexts(store.ServerConnectionString);
+        await using var contexts = faults is null ? new Contexts(store.ServerConnectionString) : new Contexts(store.ServerConnectionString, faults);
         using var sequencer = contexts.Sequencer();
         var intake = new RunIntake(contexts.Acts(sequencer), contexts, new JudgingMaterial(contexts), new ColumnMemory(contexts));
         return Assert.Single(await intake.TakeAsync(Ada, order, [file], Cancellation));
