@@ -10,11 +10,12 @@ internal sealed class WebRoot
     private readonly bool fromSource;
     private (string Stamp, Shell Shell)? kept;
 
-    public WebRoot()
+    /// <summary>Finds the pages of the server whose program stands in a folder.</summary>
+    public WebRoot(string programFolder)
     {
         // A published server has the pages beside it, wherever its folder lies; a link there leads to somebody's source.
-        var beside = new DirectoryInfo(Path.Combine(AppContext.BaseDirectory, "web"));
-        var source = beside.Exists ? beside.ResolveLinkTarget(returnFinalTarget: true)?.FullName : InSource();
+        var beside = new DirectoryInfo(Path.Combine(programFolder, "web"));
+        var source = beside.Exists ? beside.ResolveLinkTarget(returnFinalTarget: true)?.FullName : InSource(programFolder);
         fromSource = source is not null;
         Folder = source ?? beside.FullName;
     }
@@ -78,9 +79,9 @@ internal sealed class WebRoot
             + "base-uri 'none'; object-src 'none'; frame-ancestors 'none'; require-trusted-types-for 'script'; trusted-types lit-html responseledger";
     }
 
-    private static string? InSource()
+    private static string? InSource(string programFolder)
     {
-        for (var folder = new DirectoryInfo(AppContext.BaseDirectory); folder is not null; folder = folder.Parent)
+        for (var folder = new DirectoryInfo(programFolder); folder is not null; folder = folder.Parent)
         {
             if (File.Exists(Path.Combine(folder.FullName, "ResponseLedger.sln")))
                 return Path.Combine(folder.FullName, "web");

@@ -129,7 +129,7 @@ internal sealed class House : IAsyncDisposable
         services.AddSingleton<IProblemDetailsWriter, ProblemWriter>();
         services.AddProblemDetails();
         services.AddExceptionHandler<RefusalMapping>();
-        services.AddSingleton<WebRoot>();
+        services.AddSingleton(new WebRoot(AppContext.BaseDirectory));
         services.AddResponseCompression(WebFiles.Compress);
         services.Configure<BrotliCompressionProviderOptions>(options => options.Level = CompressionLevel.Optimal);
         services.Configure<GzipCompressionProviderOptions>(options => options.Level = CompressionLevel.Optimal);
