@@ -18,6 +18,9 @@ public static class ReadCodes
     /// <summary>The columns or the parameter that were chosen do not fit the file or do not make a sweep.</summary>
     public const string BadChoice = "badChoice";
 
+    /// <summary>Rows of numbers stand before the heads.</summary>
+    public const string NumbersBeforeHeads = "numbersBeforeHeads";
+
     /// <summary>Whether a comma is a decimal mark or groups thousands cannot be told.</summary>
     public const string DecimalOpen = "decimalOpen";
 

@@ -62,6 +62,30 @@ public sealed class LargeFileTests
         }
     }
 
+    [Theory]
+    [InlineData("# Hz S RI R 50\n", "1 ", "x.s1p", "extraFields")]
+    [InlineData("# Hz S RI R 50\n", "1 ", "x.s3p", "extraFields")]
+    [InlineData("#", " Hz", "x.s1p", "badOptionLine")]
+    [InlineData("[", "Version] ", "x.s1p", "badKeyword")]
+    [InlineData("", "1,bbbb,cc\n", "x.csv", "noData")]
+    [InlineData("", "bb,1,1,cc,dd\n", "x.csv", "noData")]
+    [InlineData("", "gain,phase,Vin,Vout,foo\n", "x.csv", "noData")]
+    public void A_hostile_file_costs_memory_and_time_in_proportion(string start, string piece, string name, string code)
+    {
+        const int megabyte = 1 << 20;
+        byte[] content = Encoding.ASCII.GetBytes(start + string.Concat(Enumerable.Repeat(piece, 16 * megabyte / piece.Length)));
+        long before = GC.GetAllocatedBytesForCurrentThread();
+        long began = Stopwatch.GetTimestamp();
+        FileReading reading = SweepFileReader.Read(content, name, null, TestContext.Current.CancellationToken);
+        TimeSpan took = Stopwatch.GetElapsedTime(began);
+        long allocated = GC.GetAllocatedBytesForCurrentThread() - before;
+        TestContext.Current.TestOutputHelper?.WriteLine($"{took.TotalMilliseconds:F0} ms, {allocated / (double)content.Length:F1} bytes a byte");
+        Assert.Equal(code, reading.Issues[0].Code);
+        // The characters are two bytes a byte; the rest is bounded.
+        Assert.InRange(allocated, 0, 2L * content.Length + 16 * megabyte);
+        Assert.True(took < TimeSpan.FromSeconds(10), $"It took {took}.");
+    }
+
     [Fact]
     public void More_points_than_the_limit_are_refused()
     {

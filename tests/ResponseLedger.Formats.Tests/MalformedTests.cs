@@ -34,6 +34,10 @@ public sealed class MalformedTests
     [InlineData(Head + "10,-1,0\n20,9.9E37,0\n30,-3,0\n", "overload", 3, 2)]
     [InlineData(Head + "10,-1,0\n20,-9.90000E+37,0\n30,-3,0\n", "overload", 3, 2)]
     [InlineData(Head + "10,-1,0\n20,-2,9.91E37\n30,-3,0\n", "overload", 3, 3)]
+    [InlineData(Head + "10,-1,0\n20,-2,9.9000003E37\n30,-3,0\n", "overload", 3, 3)]
+    [InlineData(Head + "10,-1,0\n20,-9.9000003E37,0\n30,-3,0\n", "overload", 3, 2)]
+    [InlineData(Head + "10,-1,0\n20,-2,9.9100001e+37\n30,-3,0\n", "overload", 3, 3)]
+    [InlineData("201,3\nFrequency (Hz),Gain (dB)\n10,-1\n20,-2\n", "numbersBeforeHeads", 2, null)]
     [InlineData(Head + "10,-1,0\n20,\"-2,0\n30,-3,0\n", "unclosedQuote", 3, 2)]
     [InlineData(Head + "10,-1,0\nend of sweep\n", "badNumber", 3, 1)]
     [InlineData(Head + "10,-1,0\n", "tooFewPoints", null, null)]
@@ -95,6 +99,14 @@ public sealed class MalformedTests
         Assert.Null(reading.Sweep);
         Assert.Equal("binaryFile", Assert.Single(reading.Issues).Code);
     }
+
+    [Fact]
+    public void A_number_beside_a_sentinel_is_a_number()
+        => Reading.Same(Reading.Of("f;|H|\n1;9.8999E37\n2;9.9101E37\n").Taken().FirstPlane, 9.8999e37, 9.9101e37);
+
+    [Fact]
+    public void Numbers_before_the_heads_are_named_with_both_lines()
+        => Assert.Contains("Line 1 holds numbers and stands before the heads in line 2", Reading.Of("201,3\nFrequency (Hz),Gain (dB)\n10,-1\n").Issues[0].Message, StringComparison.Ordinal);
 
     [Fact]
     public void Every_sentence_tells_how_to_mend_the_file()

@@ -22,6 +22,8 @@ public sealed class OpenColumnTests
     [InlineData("Frequency,Gain (dB),Phase CH2 (deg)\n1000,0.5,1\n2000,0.25,1\n", 1)]
     [InlineData("Frequency,Output (V)\n1000,0.5\n2000,0.25\n", 3)]
     [InlineData("Frequency,Attenuation (dB)\n1000,-0.5\n2000,-3\n", 2)]
+    [InlineData("Frequency,Loss (V/V)\n1000,0.5\n2000,3\n", 2)]
+    [InlineData("freq[Hz];mag:Trc1_S21;ang:Trc1_S21\n1000;0.5;10\n2000;0.25;20\n", 2)]
     [InlineData("Frequency,Loss\n1000,0.5\n2000,3\n", 2)]
     public void What_is_open_is_asked_and_each_candidate_makes_a_sweep(string text, int candidates)
     {
@@ -63,6 +65,16 @@ public sealed class OpenColumnTests
     {
         Assert.True(ColumnChoices.TryParse(json, out ColumnChoices? choices, out _));
         Reading.Of("1000,1\n2000,2\n", choices).Refused("badChoice", null, null);
+    }
+
+    [Theory]
+    [InlineData(ColumnQuantity.Phase, "", "Column 2 is chosen as phase of output minus input without a unit; state one of deg, rad and mrad.")]
+    [InlineData(ColumnQuantity.Magnitude, "furlong", "Column 2: \"furlong\" is no unit of the magnitude; taken are ratio, %,")]
+    [InlineData(ColumnQuantity.GainDb, "V", "Column 2: \"V\" is no unit of the gain; taken are dB and Np.")]
+    public void A_unit_that_does_not_fit_is_answered_with_the_units_that_do(ColumnQuantity quantity, string unit, string sentence)
+    {
+        var choices = new ColumnChoices([new(1, ColumnQuantity.Frequency, "Hz"), new(2, quantity, unit)], null);
+        Assert.StartsWith(sentence, Reading.Of("1000,1\n2000,2\n", choices).Refused("badChoice", null, null).Issues[0].Message, StringComparison.Ordinal);
     }
 
     [Theory]

@@ -125,6 +125,23 @@ public sealed class TouchstoneTests
     }
 
     [Theory]
+    [InlineData("# Hz dB\n1000,-1\n2000,-2\n", "columnsOpen")]
+    [InlineData("# Hz dB deg\n1000 -1 5\n2000 -2 6\n", null)]
+    [InlineData("# Hz S\n1000,-1\n2000,-2\n", "columnsOpen")]
+    [InlineData("# Hz, dB\n1000,-1\n2000,-2\n", null)]
+    public void A_comment_of_units_makes_no_Touchstone_file(string text, string? code)
+    {
+        foreach (string name in new[] { "sweep.csv", "sweep.txt" })
+        {
+            FileReading reading = Reading.Of(text, name: name);
+            Assert.Equal("delimited", reading.Reader);
+            Assert.Equal(code, reading.Issues.Count == 0 ? null : reading.Issues[0].Code);
+            if (code is null)
+                Reading.Same(reading.Taken().FirstPlane, -1, -2);
+        }
+    }
+
+    [Theory]
     [InlineData("S31")]
     [InlineData("S0,1")]
     [InlineData("T21")]

@@ -16,6 +16,14 @@ public static class Answers
         return body.Length == 0 ? default : JsonDocument.Parse(body).RootElement;
     }
 
+    /// <summary>Asserts that it is a problem document, of whatever status, and gives it.</summary>
+    public static async Task<JsonElement> ShouldBeProblemAsync(this HttpResponseMessage response)
+    {
+        var body = await response.Content.ReadAsStringAsync();
+        Assert.True(response.Content.Headers.ContentType?.MediaType == "application/problem+json", $"{(int)response.StatusCode}: {body}");
+        return JsonDocument.Parse(body).RootElement;
+    }
+
     /// <summary>Asserts that it is a problem document with this status and code, and gives it.</summary>
     public static async Task<JsonElement> ShouldRefuseAsync(this HttpResponseMessage response, HttpStatusCode expected, string? code = null)
     {

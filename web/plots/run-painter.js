@@ -8,6 +8,9 @@ import { curvesOf, drawPercentiles, drawRuns } from './run-drawing.js';
 
 const longestSliceMs = 8;
 
+/** So few runs are drawn on the page sooner than a worker could answer. */
+const fewRuns = 150;
+
 /** The name under which the content security policy lets this module give a worker its address. */
 const policyName = 'responseledger';
 
@@ -42,7 +45,7 @@ export class RunPainter {
   keep(runs, points) {
     const number = ++this.#numbers;
     this.#sources.set(number, { runs, points });
-    if (this.#worker) {
+    if (this.#worker && runs.length > fewRuns) {
       const curves = curvesOf(runs, points);
       this.#worker.postMessage({ kind: 'keep', number, curves }, [curves.values.buffer]);
     }
@@ -52,7 +55,7 @@ export class RunPainter {
 
   /** @param {number} number */
   forget(number) {
-    this.#worker?.postMessage({ kind: 'forget', number });
+    if (this.#isWorkers(number)) this.#worker?.postMessage({ kind: 'forget', number });
     this.#sources.delete(number);
     this.#kept.delete(number);
   }
@@ -62,7 +65,7 @@ export class RunPainter {
    * @returns {Promise<Picture | null>} null where the curves were forgotten, or the worker was lost: then asking again helps
    */
   draw(number, request) {
-    if (this.#worker) return /** @type {Promise<Picture | null>} */ (this.#ask({ kind: 'draw', number, request }));
+    if (this.#isWorkers(number)) return /** @type {Promise<Picture | null>} */ (this.#ask({ kind: 'draw', number, request }));
     const curves = this.#curves(number);
     return curves ? inSlices(drawRuns(curves, request)).then((pixels) => canvasOf(pixels, request)) : Promise.resolve(null);
   }
@@ -72,9 +75,14 @@ export class RunPainter {
    * @returns {Promise<Float64Array[] | null>}
    */
   percentiles(number, percents) {
-    if (this.#worker) return /** @type {Promise<Float64Array[] | null>} */ (this.#ask({ kind: 'percentiles', number, percents }));
+    if (this.#isWorkers(number)) return /** @type {Promise<Float64Array[] | null>} */ (this.#ask({ kind: 'percentiles', number, percents }));
     const curves = this.#curves(number);
     return curves ? inSlices(drawPercentiles(curves, percents)) : Promise.resolve(null);
+  }
+
+  /** @param {number} number */
+  #isWorkers(number) {
+    return this.#worker !== null && (this.#sources.get(number)?.runs.length ?? 0) > fewRuns;
   }
 
   /** @param {number} number */

@@ -16,6 +16,9 @@ internal enum Convention
 /// <param name="ReferenceDbv">Levels: the reference in dB re 1 V rms; NaN for dB and dBm, whose reference is not a known voltage. Null for linear units.</param>
 internal sealed record AmplitudeUnit(string Name, double Volts, Convention Convention, double? ReferenceDbv)
 {
+    private static readonly (string Prefix, string Name, double Volts)[] Voltages =
+        [("volts", "V", 1), ("volt", "V", 1), ("mv", "mV", 1e-3), ("uv", "uV", 1e-6), ("nv", "nV", 1e-9), ("pv", "pV", 1e-12), ("kv", "kV", 1e3), ("v", "V", 1)];
+
     public bool IsLevel => ReferenceDbv is not null;
 
     public static bool TryParse(string unit, out AmplitudeUnit? amplitude)
@@ -41,15 +44,16 @@ internal sealed record AmplitudeUnit(string Name, double Volts, Convention Conve
             return true;
         }
 
-        foreach ((string prefix, string name, double volts) in (ReadOnlySpan<(string, string, double)>)[("volts", "V", 1), ("volt", "V", 1), ("mv", "mV", 1e-3), ("uv", "uV", 1e-6), ("kv", "kV", 1e3), ("v", "V", 1)])
+        foreach ((string prefix, string name, double volts) in Voltages)
         {
             if (!text.StartsWith(prefix, StringComparison.Ordinal))
                 continue;
             Convention? convention = ConventionOf(text[prefix.Length..]);
             if (convention is null)
                 continue;
+            bool mega = prefix == "mv" && unit.AsSpan().TrimStart().StartsWith("M", StringComparison.Ordinal);
             string suffix = convention switch { Convention.Rms => " rms", Convention.Peak => " peak", Convention.PeakToPeak => " pp", _ => "" };
-            amplitude = new AmplitudeUnit(name + suffix, volts, convention.Value, null);
+            amplitude = new AmplitudeUnit((mega ? "MV" : name) + suffix, mega ? 1e6 : volts, convention.Value, null);
             return true;
         }
 

@@ -50,13 +50,23 @@ internal static class ColumnPlan
         return (null, open is null ? [] : [.. open.Select(c => new ColumnChoices(c, null))]);
     }
 
+    /// <summary>Leaves out the candidates that would take a text that is not understood for a plain unit: "rpm" for Hz, "mA" for V.</summary>
+    public static IReadOnlyList<ColumnChoices> Offered(IReadOnlyList<ColumnChoices> candidates, IReadOnlyList<ColumnMeaning> meanings)
+        => [.. candidates.Where(c => c.Columns.All(column => !meanings[column.Column - 1].MustNotBeOffered))];
+
     /// <summary>Why a chosen set makes no sweep; null when it does.</summary>
     public static string? Problem(IReadOnlyList<ColumnChoice> columns)
     {
         foreach (ColumnChoice column in columns)
         {
             if (Normalise(column) is null)
-                return $"Column {column.Column}: \"{column.Unit}\" is no unit of {column.Quantity}.";
+                {
+                string quantity = UnitsTaken.Words(column.Quantity);
+                string units = UnitsTaken.Of(column.Quantity);
+                return column.Unit.Trim().Length == 0
+                    ? $"Column {column.Column} is chosen as {quantity} without a unit; state one of {units}."
+                    : $"Column {column.Column}: \"{RowTable.Shown(column.Unit)}\" is no unit of the {quantity}; taken are {units}.";
+            }
         }
 
         if (columns.GroupBy(c => RoleOf(c.Quantity)).FirstOrDefault(g => g.Key is not null && g.Count() > 1) is { } twice)
@@ -83,7 +93,7 @@ internal static class ColumnPlan
             {
                 ColumnQuantity.Frequency => "Hz",
                 ColumnQuantity.GainDb or ColumnQuantity.AttenuationDb => "dB",
-                ColumnQuantity.Magnitude or ColumnQuantity.Real or ColumnQuantity.Imaginary => "ratio",
+                ColumnQuantity.Magnitude or ColumnQuantity.InverseMagnitude or ColumnQuantity.Real or ColumnQuantity.Imaginary => "ratio",
                 _ => "",
             };
         }
@@ -93,8 +103,9 @@ internal static class ColumnPlan
         {
             (ColumnQuantity.Frequency, UnitFamily.Frequency) => true,
             (ColumnQuantity.GainDb or ColumnQuantity.AttenuationDb, UnitFamily.Decibel) => true,
-            (ColumnQuantity.Magnitude or ColumnQuantity.Real or ColumnQuantity.Imaginary, UnitFamily.Ratio or UnitFamily.Voltage) => true,
-            (ColumnQuantity.Phase or ColumnQuantity.InputPhase or ColumnQuantity.OutputPhase, UnitFamily.Angle) => true,
+            (ColumnQuantity.Magnitude or ColumnQuantity.InverseMagnitude, UnitFamily.PowerRatio) => true,
+            (ColumnQuantity.Magnitude or ColumnQuantity.InverseMagnitude or ColumnQuantity.Real or ColumnQuantity.Imaginary, UnitFamily.Ratio or UnitFamily.Voltage) => true,
+            (ColumnQuantity.Phase or ColumnQuantity.PhaseLag or ColumnQuantity.InputPhase or ColumnQuantity.OutputPhase, UnitFamily.Angle) => true,
             _ => false,
         };
         return fits ? choice with { Unit = unit!.Name } : null;
@@ -125,18 +136,18 @@ internal static class ColumnPlan
     // The phase of one channel alone may be meant as the difference; only a person knows.
     private static IReadOnlyList<ColumnMeaning> LonePhaseAsked(IReadOnlyList<ColumnMeaning> meanings)
     {
-        bool Has(ColumnQuantity quantity) => meanings.Any(m => m.Alternatives.Any(a => a.Quantity == quantity));
-        if (Has(ColumnQuantity.Phase) || Has(ColumnQuantity.InputPhase) == Has(ColumnQuantity.OutputPhase))
+        bool Has(Role role) => meanings.Any(m => m.Alternatives.Any(a => RoleOf(a.Quantity) == role));
+        if (Has(Role.Phase) || Has(Role.InputPhase) == Has(Role.OutputPhase))
             return meanings;
         return [.. meanings.Select(m => m.Alternatives.Any(a => RoleOf(a.Quantity) is Role.InputPhase or Role.OutputPhase)
-            ? new ColumnMeaning([.. m.Alternatives.Select(a => (ColumnQuantity.Phase, a.Unit))], true)
+            ? m with { Alternatives = [.. m.Alternatives.Select(a => (ColumnQuantity.Phase, a.Unit))], Ask = true }
             : m)];
     }
 
-    // A lone phase of one channel, or a phase whose unit is open, must not vanish into a run without phase.
+    // A lone phase of one channel, or a phase or imaginary part whose unit is open, must not vanish into a run without phase.
     private static bool LeavesPhaseBehind(Role[] set, IReadOnlyList<ColumnMeaning> meanings)
         => !set.Contains(Role.Real) && !set.Contains(Role.Phase) && !set.Contains(Role.OutputPhase)
-            && meanings.Any(m => m.Alternatives.Any(a => RoleOf(a.Quantity) is Role.Phase or Role.InputPhase or Role.OutputPhase));
+            && meanings.Any(m => m.Alternatives.Any(a => RoleOf(a.Quantity) is Role.Phase or Role.InputPhase or Role.OutputPhase || (a.Quantity == ColumnQuantity.Imaginary && !m.IsSettled)));
 
     private static List<List<ColumnChoice>>? Candidates(Role[] set, IReadOnlyList<ColumnMeaning> meanings, out bool asked)
     {
@@ -193,7 +204,8 @@ internal static class ColumnPlan
     private static int Rank(ColumnChoice choice) => choice switch
     {
         { Quantity: ColumnQuantity.Magnitude } => 1,
-        { Quantity: ColumnQuantity.AttenuationDb } => 2,
+        { Quantity: ColumnQuantity.AttenuationDb or ColumnQuantity.InverseMagnitude } => 2,
+        { Quantity: ColumnQuantity.PhaseLag } => 4,
         { Unit: "Hz" or "dB" or "deg" or "ratio" } => 0,
         { Quantity: ColumnQuantity.InputAmplitude or ColumnQuantity.OutputAmplitude } => choice.Unit.StartsWith("dB", StringComparison.Ordinal) ? 4 : 0,
         _ => 3,
@@ -202,10 +214,10 @@ internal static class ColumnPlan
     private static Role? RoleOf(ColumnQuantity quantity) => quantity switch
     {
         ColumnQuantity.Frequency => Role.Frequency,
-        ColumnQuantity.GainDb or ColumnQuantity.AttenuationDb or ColumnQuantity.Magnitude => Role.Gain,
+        ColumnQuantity.GainDb or ColumnQuantity.AttenuationDb or ColumnQuantity.Magnitude or ColumnQuantity.InverseMagnitude => Role.Gain,
         ColumnQuantity.Real => Role.Real,
         ColumnQuantity.Imaginary => Role.Imaginary,
-        ColumnQuantity.Phase => Role.Phase,
+        ColumnQuantity.Phase or ColumnQuantity.PhaseLag => Role.Phase,
         ColumnQuantity.InputAmplitude => Role.InputAmplitude,
         ColumnQuantity.OutputAmplitude => Role.OutputAmplitude,
         ColumnQuantity.InputPhase => Role.InputPhase,

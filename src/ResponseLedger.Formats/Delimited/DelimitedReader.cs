@@ -7,6 +7,8 @@ internal sealed class DelimitedReader
 {
     public const string Name = "delimited";
 
+    private const int MostHeadsShown = 20;
+
     private readonly List<ReadNote> notes = [];
     private readonly IssueList issues = new();
     private readonly List<FoundColumn> columns = [];
@@ -41,6 +43,13 @@ internal sealed class DelimitedReader
             return Refused([]);
         }
 
+        if (layout.HeadsAfterNumbersLine is { } late)
+        {
+            issues.Add(late, null, ReadCodes.NumbersBeforeHeads,
+                $"Line {layout.DataLine} holds numbers and stands before the heads in line {late}; take such lines out or begin them with #, so that the heads come first.");
+            return Refused([]);
+        }
+
         IReadOnlyList<ColumnChoice>? plan = Plan(text, layout, chosen, out IReadOnlyList<ColumnChoices> candidates);
         FindColumns(layout, plan);
         if (plan is null)
@@ -48,9 +57,10 @@ internal sealed class DelimitedReader
 
         var table = new RowTable(plan, layout, issues);
         table.Read(text, ct);
-        if (table.AttenuationIsNegative && chosen is null)
+        bool signIsChecked = plan.Any(c => c.Quantity == ColumnQuantity.AttenuationDb && layout.Meanings[c.Column - 1].SignIsChecked && !IsChosen(chosen, c.Column));
+        if (signIsChecked && table.AttenuationIsOpen)
         {
-            AskAttenuation(layout, plan, out candidates);
+            AskAttenuation(layout, plan, table.AttenuationIsMixed, out candidates);
             return Refused(candidates);
         }
 
@@ -83,12 +93,19 @@ internal sealed class DelimitedReader
             return settled;
         if (candidates.Count == 0)
             candidates = ColumnTraits.Candidates(ColumnTraits.Of(text, layout), layout.Meanings);
+        candidates = ColumnPlan.Offered(candidates, layout.Meanings);
         string what = layout.Heads.Length == 0
             ? "The file has no heads, so nothing says what its columns hold"
-            : $"The heads do not settle what the columns hold ({string.Join(", ", layout.Heads.Select(Shortened))})";
+            : $"The heads do not settle what the columns hold ({string.Join(", ", layout.Heads.Take(MostHeadsShown).Select(Shortened))}{(layout.Heads.Length > MostHeadsShown ? ", ..." : "")}){Doubts(layout)}";
         issues.Add(layout.HeadsLine, null, ReadCodes.ColumnsOpen,
-            $"{what}; choose quantity and unit of the columns{(candidates.Count > 0 ? ", for example one of the candidates" : "")}, or name them in a row of heads such as Frequency (Hz), Gain (dB), Phase (deg).");
+            $"{what}. Choose quantity and unit of the columns{(candidates.Count > 0 ? ", for example one of the candidates" : "")}, or name them in a row of heads such as Frequency (Hz), Gain (dB), Phase (deg).");
         return null;
+    }
+
+    private static string Doubts(Layout layout)
+    {
+        string[] doubts = [.. layout.Meanings.Select((m, i) => m.Doubt is null ? null : $". Column {i + 1}: {m.Doubt}").OfType<string>().Take(MostHeadsShown)];
+        return string.Concat(doubts);
     }
 
     // What is chosen rules; heads only fill in where the choice alone makes no sweep.
@@ -141,7 +158,7 @@ internal sealed class DelimitedReader
 
         if (plan is null)
             return;
-        notes.Add(new ReadNote("columns", "Read: " + string.Join("; ", plan.Select(c => $"column {c.Column} as {Words(c.Quantity)} in {c.Unit}")) + "."));
+        notes.Add(new ReadNote("columns", "Read: " + string.Join("; ", plan.Select(c => $"column {c.Column} as {UnitsTaken.Words(c.Quantity)} in {c.Unit}")) + "."));
         foreach (ColumnChoice use in plan)
             NoteBareUnit(layout, use);
         int[] aside = [.. columns.Where(c => c.Quantity == ColumnQuantity.Ignore).Select(c => c.Column)];
@@ -153,32 +170,19 @@ internal sealed class DelimitedReader
     private void NoteBareUnit(Layout layout, ColumnChoice use)
     {
         int i = use.Column - 1;
-        bool bare = layout.Meanings[i].IsSettled && HeadUnit.Part(layout.Heads[i]).Unit is null && (i >= layout.Units.Length || layout.Units[i].Length == 0);
-        if (bare && layout.Meanings[i].Alternatives[0] == (use.Quantity, use.Unit))
+        if (layout.Meanings[i] is { IsBare: true, IsSettled: true } && layout.Meanings[i].Alternatives[0] == (use.Quantity, use.Unit))
             notes.Add(new ReadNote("unitSettled", $"The head of column {use.Column} names no unit; it was taken in {use.Unit}."));
     }
 
-    private void AskAttenuation(Layout layout, IReadOnlyList<ColumnChoice> plan, out IReadOnlyList<ColumnChoices> candidates)
+    private static bool IsChosen(ColumnChoices? chosen, int column) => chosen is not null && chosen.Columns.Any(c => c.Column == column);
+
+    private void AskAttenuation(Layout layout, IReadOnlyList<ColumnChoice> plan, bool mixed, out IReadOnlyList<ColumnChoices> candidates)
     {
         IReadOnlyList<ColumnChoice> asGain = [.. plan.Select(c => c.Quantity == ColumnQuantity.AttenuationDb ? c with { Quantity = ColumnQuantity.GainDb } : c)];
         candidates = [new ColumnChoices(asGain, null), new ColumnChoices(plan, null)];
         issues.Add(layout.HeadsLine, null, ReadCodes.ColumnsOpen,
-            "The head says attenuation, but its values are negative: say whether they are the gain in dB (a loss is negative) or an attenuation (a loss is positive).");
+            $"The head says attenuation, but its values are {(mixed ? "of both signs" : "negative")}: say whether they are the gain in dB (a loss is negative) or an attenuation (a loss is positive).");
     }
-
-    private static string Words(ColumnQuantity quantity) => quantity switch
-    {
-        ColumnQuantity.GainDb => "gain",
-        ColumnQuantity.AttenuationDb => "attenuation",
-        ColumnQuantity.Real => "real part",
-        ColumnQuantity.Imaginary => "imaginary part",
-        ColumnQuantity.Phase => "phase of output minus input",
-        ColumnQuantity.InputAmplitude => "input amplitude",
-        ColumnQuantity.OutputAmplitude => "output amplitude",
-        ColumnQuantity.InputPhase => "input phase",
-        ColumnQuantity.OutputPhase => "output phase",
-        _ => quantity == ColumnQuantity.Frequency ? "frequency" : "magnitude",
-    };
 
     private static string Shortened(string head) => head.Length <= 40 ? head : head[..40] + "...";
 }

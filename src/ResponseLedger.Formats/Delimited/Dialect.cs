@@ -19,6 +19,10 @@ internal readonly record struct Dialect(char Delimiter, bool DecimalComma)
     private const int MostRows = 20_000;
     private const int LongestProbedLine = 65_536;
 
+    // What holds no row within these bounds is no table; without them a file of words costs minutes.
+    private const int MostProbedLines = 25_000;
+    private const int MostProbedCharacters = 4 << 20;
+
     public string DelimiterName => Delimiter switch
     {
         ',' => "comma",
@@ -28,7 +32,7 @@ internal readonly record struct Dialect(char Delimiter, bool DecimalComma)
     };
 
     /// <summary>Finds the dialect in which most lines are rows of numbers; where no line is, one in which they hold words too.</summary>
-    /// <returns>False when no line holds two numbers or more in any dialect.</returns>
+    /// <returns>False when no line of those that are looked at holds two numbers or more in any dialect.</returns>
     public static bool TryFind(ReadOnlySpan<char> text, CancellationToken ct, out Dialect dialect, out int firstRowLine, out int columnCount)
         => TryFind(text, wordsToo: false, ct, out dialect, out firstRowLine, out columnCount)
             || TryFind(text, wordsToo: true, ct, out dialect, out firstRowLine, out columnCount);
@@ -41,14 +45,18 @@ internal readonly record struct Dialect(char Delimiter, bool DecimalComma)
             rows[k] = [];
         bool markSeen = false;
         int best = 0;
+        int probedLines = 0;
+        int probedCharacters = 0;
         var lines = new LineWalk(text);
-        while (score[best] < 2 * (markSeen ? EnoughRows : MostRows) && lines.MoveNext())
+        while (score[best] < 2 * (markSeen ? EnoughRows : MostRows) && probedLines < MostProbedLines && probedCharacters < MostProbedCharacters && lines.MoveNext())
         {
             if ((lines.Number & 1023) == 0)
                 ct.ThrowIfCancellationRequested();
             ReadOnlySpan<char> line = lines.Line;
             if (line.Length > LongestProbedLine || line.IsWhiteSpace() || Fields.IsComment(line))
                 continue;
+            probedLines++;
+            probedCharacters += line.Length;
             for (int k = 0; k < Known.Length; k++)
             {
                 int weight = Known[k].RowWeight(line, wordsToo, out int fields);
@@ -73,6 +81,10 @@ internal readonly record struct Dialect(char Delimiter, bool DecimalComma)
     // 2 for a row of numbers, 1 where a number groups thousands (it will be refused by name), else 0.
     private int RowWeight(ReadOnlySpan<char> line, bool wordsToo, out int count)
     {
+        count = 0;
+        // A row has two numbers, so that a line without the delimiter is none: most dialects of a line end here.
+        if (!line.Contains(Delimiter) && (Delimiter != ' ' || !line.Contains('\t')))
+            return 0;
         int numbers = 0;
         int words = 0;
         int weight = 2;

@@ -10,6 +10,11 @@ internal sealed class Layout
     // Title blocks are short; only this many lines before the first row are looked at for heads.
     private const int MostTitleLines = 200;
 
+    private const int LongestHeads = 65_536;
+    private const int MostHeadsRead = 10_000;
+
+    private int headsRead;
+
     private Layout(Dialect dialect, int columnCount)
     {
         Dialect = dialect;
@@ -35,6 +40,9 @@ internal sealed class Layout
     /// <summary>How many heads were named in a row of heads that does not fit the rows of numbers; null when it fits.</summary>
     public int? MismatchedHeadCount { get; private set; }
 
+    /// <summary>The line of heads that stands after the first rows of numbers; null where heads stand before them or nowhere.</summary>
+    public int? HeadsAfterNumbersLine { get; private set; }
+
     /// <summary>The line of the first row.</summary>
     public int DataLine { get; private set; }
 
@@ -52,7 +60,7 @@ internal sealed class Layout
         var lines = new LineWalk(text);
         while (lines.MoveNext() && lines.Number < firstRowLine)
         {
-            if (lines.Line.IsWhiteSpace() || lines.Line.Length > 65_536 || lines.Number < firstRowLine - MostTitleLines)
+            if (lines.Line.IsWhiteSpace() || lines.Line.Length > LongestHeads || lines.Number < firstRowLine - MostTitleLines)
                 continue;
             bool comment = Fields.IsComment(lines.Line);
             ReadOnlySpan<char> plain = comment ? lines.Line.TrimStart().TrimStart("#!%*/").Trim() : lines.Line;
@@ -63,7 +71,23 @@ internal sealed class Layout
         layout.DataOffset = lines.Offset;
         int heads = layout.FindHeads(titles);
         layout.FindData(titles, heads);
+        if (heads < 0)
+            layout.FindLateHeads(LineWalk.From(text, layout.DataOffset, layout.DataLine));
         return layout;
+    }
+
+    private void FindLateHeads(LineWalk lines)
+    {
+        for (int i = 0; i < MostTitleLines && lines.MoveNext(); i++)
+        {
+            if (lines.Line.Length > LongestHeads || lines.Line.IsWhiteSpace() || Fields.IsComment(lines.Line) || LooksLikeRow(lines.Line))
+                continue;
+            if (SplitHeads(lines.Line.ToString()) is { } cells && cells.Length == ColumnCount && !HasNumber(cells) && NamesSweep(cells))
+            {
+                HeadsAfterNumbersLine = lines.Number;
+                return;
+            }
+        }
     }
 
     /// <summary>Finds plain heads in a file without one good row, so that the faults of its rows can still be named by line.</summary>
@@ -87,7 +111,7 @@ internal sealed class Layout
                 var fields = new Fields(lines.Line, delimiter);
                 int known = 0;
                 bool frequency = false;
-                while (fields.MoveNext() && fields.Count <= 256)
+                while (fields.MoveNext() && fields.Count <= 64)
                 {
                     ColumnMeaning meaning = HeadWords.Read(fields.Current.ToString(), "");
                     known += meaning.Alternatives.Count > 0 ? 1 : 0;
@@ -126,9 +150,7 @@ internal sealed class Layout
             {
                 if (titles[i].Comment != comment || SplitHeads(titles[i].Text) is not { Length: >= 2 } cells || HasNumber(cells))
                     continue;
-                ColumnMeaning[] meanings = [.. cells.Select(c => HeadWords.Read(c, ""))];
-                bool frequency = meanings.Any(m => m.Alternatives.Any(a => a.Quantity == ColumnQuantity.Frequency));
-                if (!frequency || meanings.Count(m => m.Alternatives.Count > 0) < 2)
+                if (!NamesSweep(cells))
                     continue;
                 if (cells.Length != ColumnCount)
                 {
@@ -164,6 +186,23 @@ internal sealed class Layout
         return last;
     }
 
+    // A frequency and one thing more. What is read is bounded: a title block of thousands of words costs seconds.
+    private bool NamesSweep(string[] cells)
+    {
+        bool frequency = false;
+        int known = 0;
+        foreach (string cell in cells)
+        {
+            if (headsRead++ >= MostHeadsRead)
+                return false;
+            ColumnMeaning meaning = HeadWords.Read(cell, "");
+            known += meaning.Alternatives.Count > 0 ? 1 : 0;
+            frequency |= meaning.Alternatives.Any(a => a.Quantity == ColumnQuantity.Frequency);
+        }
+
+        return frequency && known >= 2;
+    }
+
     // After the heads only a row of units is skipped; whatever else stands there is a row, and is judged as one.
     private void FindData(List<Title> titles, int heads)
     {
@@ -172,7 +211,7 @@ internal sealed class Layout
         {
             while (next < titles.Count && titles[next].Comment)
                 next++;
-            if (next < titles.Count && SplitHeads(titles[next].Text) is { } cells && cells.Length == ColumnCount && IsUnits(cells))
+            if (next < titles.Count && SplitHeads(titles[next].Text) is { } cells && cells.Length == ColumnCount && (IsUnits(cells) || HoldsUnit(cells)))
             {
                 Units = cells;
                 next++;
@@ -202,9 +241,9 @@ internal sealed class Layout
         HeadsLine = line;
     }
 
-    private static bool LooksLikeRow(string text)
+    private static bool LooksLikeRow(ReadOnlySpan<char> text)
     {
-        string start = text.TrimStart(' ', '\t', '"', '+', '-', '.', '\u2212');
+        ReadOnlySpan<char> start = text.TrimStart(" \t\"+-.\u2212");
         return start.Length > 0 && char.IsAsciiDigit(start[0]);
     }
 
@@ -213,6 +252,9 @@ internal sealed class Layout
 
     private static bool IsUnits(string[] cells)
         => cells.Any(c => c.Length > 0) && cells.All(c => c.Length == 0 || UnitText.Parse(c.Trim('[', ']', '(', ')').Trim()) is not null);
+
+    // One unit that is known among words makes a row of units; those that are not known are asked, not judged as numbers.
+    private bool HoldsUnit(string[] cells) => !HasNumber(cells) && cells.Any(c => UnitText.Parse(c.Trim('[', ']', '(', ')').Trim()) is not null);
 
     private string[]? SplitHeads(string line)
     {

@@ -6,6 +6,7 @@ namespace ResponseLedger.Formats.Delimited;
 internal sealed class RowTable
 {
     private const int MostFields = 4096;
+    private const double RippleDb = 0.5;
 
     private readonly Layout layout;
     private readonly IssueList issues;
@@ -18,8 +19,8 @@ internal sealed class RowTable
     private bool commaSeen;
     private bool commaIsDecimal;
     private int firstCommaLine;
-    private int negative;
-    private int positive;
+    private double leastAttenuationDb;
+    private double mostAttenuationDb;
 
     public RowTable(IReadOnlyList<ColumnChoice> plan, Layout layout, IssueList issues)
     {
@@ -42,8 +43,14 @@ internal sealed class RowTable
     /// <summary>All rows, faulty ones included.</summary>
     public int RowCount { get; private set; }
 
-    /// <summary>A column of attenuation whose values are zero and less says something else than its head.</summary>
-    public bool AttenuationIsNegative => negative > 0 && positive == 0;
+    /// <summary>
+    /// Whether the signs of a column of attenuation leave open what it holds: a passive device shows no more than a little ripple
+    /// under zero, so negative values that go further, or that outweigh the positive ones, may as well be a gain.
+    /// </summary>
+    public bool AttenuationIsOpen => leastAttenuationDb < -RippleDb || -leastAttenuationDb > mostAttenuationDb;
+
+    /// <summary>Whether an open column of attenuation has values of both signs.</summary>
+    public bool AttenuationIsMixed => leastAttenuationDb < 0 && mostAttenuationDb > 0;
 
     public Span<double> Plane(int slot) => planes[slot].AsSpan(0, Count);
 
@@ -155,15 +162,17 @@ internal sealed class RowTable
                 return (ReadCodes.ZeroFrequency, "is a frequency of zero, which has no place on a logarithmic axis; take the row out.");
             case ColumnQuantity.Frequency when value < 0:
                 return (ReadCodes.NegativeFrequency, "is a negative frequency; take the row out.");
-            case ColumnQuantity.Magnitude when value < 0:
+            case ColumnQuantity.InverseMagnitude when value == 0:
+                return (ReadCodes.ZeroInput, "is an input over an output of zero, by which nothing can be divided; take the row out.");
+            case ColumnQuantity.Magnitude or ColumnQuantity.InverseMagnitude when value < 0:
                 return (ReadCodes.NegativeMagnitude, "is a negative magnitude; if the column is in dB, say so in its head or choose gain in dB.");
             case ColumnQuantity.InputAmplitude when !isLevel[slot] && value == 0:
                 return (ReadCodes.ZeroInput, "is an input amplitude of zero, by which nothing can be divided; take the row out.");
             case ColumnQuantity.InputAmplitude or ColumnQuantity.OutputAmplitude when !isLevel[slot] && value < 0:
                 return (ReadCodes.NegativeMagnitude, "is a negative amplitude; if the column is in dBV, say so in its head or choose that unit.");
             case ColumnQuantity.AttenuationDb:
-                negative += value < 0 ? 1 : 0;
-                positive += value > 0 ? 1 : 0;
+                leastAttenuationDb = Math.Min(leastAttenuationDb, value);
+                mostAttenuationDb = Math.Max(mostAttenuationDb, value);
                 break;
         }
 

@@ -51,12 +51,20 @@ internal sealed class SweepAssembly(IReadOnlyList<ColumnChoice> plan, RowTable t
         if (Column(ColumnQuantity.AttenuationDb) is { } attenuationDb)
         {
             TensorPrimitives.Negate(attenuationDb, attenuationDb);
-            notes.Add(new ReadNote("attenuation", "The attenuation was taken with the opposite sign as the gain in dB."));
+            notes.Add(new ReadNote("attenuation", $"The attenuation in column {ColumnOf(ColumnQuantity.AttenuationDb)} (input over output) was taken with the opposite sign as the gain in dB."));
             return (phaseDeg is null ? SweepForm.Level : SweepForm.LevelPhase, attenuationDb, phaseDeg);
         }
 
         if (Column(ColumnQuantity.Magnitude) is { } ratio)
             return (phaseDeg is null ? SweepForm.Ratio : SweepForm.RatioPhase, ratio, phaseDeg);
+        if (Column(ColumnQuantity.InverseMagnitude) is { } inverse)
+        {
+            for (int i = 0; i < inverse.Length; i++)
+                inverse[i] = 1 / inverse[i];
+            notes.Add(new ReadNote("inverse", $"Column {ColumnOf(ColumnQuantity.InverseMagnitude)} is the input over the output; one over it was taken as the gain."));
+            return (phaseDeg is null ? SweepForm.Ratio : SweepForm.RatioPhase, inverse, phaseDeg);
+        }
+
         double[] amplitude = Quotient(out bool level);
         return level
             ? (phaseDeg is null ? SweepForm.Level : SweepForm.LevelPhase, amplitude, phaseDeg)
@@ -67,6 +75,13 @@ internal sealed class SweepAssembly(IReadOnlyList<ColumnChoice> plan, RowTable t
     {
         if (Column(ColumnQuantity.Phase) is { } phaseDeg)
             return phaseDeg;
+        if (Column(ColumnQuantity.PhaseLag) is { } lagDeg)
+        {
+            TensorPrimitives.Negate(lagDeg, lagDeg);
+            notes.Add(new ReadNote("phaseLag", $"The phase in column {ColumnOf(ColumnQuantity.PhaseLag)} (input minus output) was taken with the opposite sign."));
+            return lagDeg;
+        }
+
         if (Column(ColumnQuantity.OutputPhase) is not { } outputDeg)
             return null;
         TensorPrimitives.Subtract(outputDeg, Column(ColumnQuantity.InputPhase), outputDeg);
@@ -124,6 +139,12 @@ internal sealed class SweepAssembly(IReadOnlyList<ColumnChoice> plan, RowTable t
             TensorPrimitives.Multiply(values, unit.Multiply, values);
         if (unit.Divide != 1)
             TensorPrimitives.Divide(values, unit.Divide, values);
+        if (unit.Family == UnitFamily.PowerRatio)
+        {
+            TensorPrimitives.Sqrt(values, values);
+            notes.Add(new ReadNote("powerRatio", $"Column {choice.Column} is a ratio of powers ({unit.Name}), whose level is 10 log10 of it; its square root was taken as the gain."));
+        }
+
         return values;
     }
 
@@ -182,11 +203,11 @@ internal sealed class SweepAssembly(IReadOnlyList<ColumnChoice> plan, RowTable t
                 issues.CountUnlisted();
             else
             {
-                issues.Insert(twice[i].Line, FrequencyColumn, ReadCodes.DuplicateFrequency,
+                issues.Insert(twice[i].Line, ColumnOf(ColumnQuantity.Frequency), ReadCodes.DuplicateFrequency,
                     $"The frequency stands in line {twice[i].First} already; keep one of the two rows.");
             }
         }
     }
 
-    private int FrequencyColumn => plan.First(c => c.Quantity == ColumnQuantity.Frequency).Column;
+    private int ColumnOf(ColumnQuantity quantity) => plan.First(c => c.Quantity == quantity).Column;
 }

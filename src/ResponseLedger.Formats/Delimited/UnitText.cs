@@ -1,4 +1,3 @@
-using System.Globalization;
 using System.Text;
 
 namespace ResponseLedger.Formats.Delimited;
@@ -10,6 +9,7 @@ internal enum UnitFamily
     Frequency,
     Decibel,
     Ratio,
+    PowerRatio,
     Voltage,
     VoltageLevel,
     Angle,
@@ -18,11 +18,18 @@ internal enum UnitFamily
 /// <summary>A unit as it stands in a head, in a row of units, or in choices.</summary>
 /// <param name="Name">Its canonical name.</param>
 /// <param name="Family">What it measures.</param>
-/// <param name="Multiply">Factor to the base unit (Hz, ratio, degree).</param>
+/// <param name="Multiply">Factor to the base unit (Hz, dB, ratio, degree).</param>
 /// <param name="Divide">Divisor to the base unit: kept apart so that 1 mHz is 1/1000 Hz, correctly rounded.</param>
-/// <param name="MayBeMega">Whether it is written as mHz, which some write for megahertz.</param>
-internal sealed record UnitText(string Name, UnitFamily Family, double Multiply = 1, double Divide = 1, bool MayBeMega = false)
+internal sealed record UnitText(string Name, UnitFamily Family, double Multiply = 1, double Divide = 1)
 {
+    private const double DecibelsPerNeper = 8.685889638065037;
+
+    /// <summary>In a head: the units that this text may stand for; empty where it stands for itself.</summary>
+    public IReadOnlyList<string> Asked { get; init; } = [];
+
+    /// <summary>The text as it was written, where it is asked.</summary>
+    public string Stated { get; init; } = "";
+
     /// <summary>Lower case without blanks and underscores, micro signs as u, ohm signs as ohm.</summary>
     public static string Squeeze(string unit)
     {
@@ -53,69 +60,51 @@ internal sealed record UnitText(string Name, UnitFamily Family, double Multiply 
         if (unit.Length is 0 or > 32)
             return null;
         string text = Squeeze(unit);
-        UnitText? plain = text switch
-        {
-            "hz" or "hertz" or "cps" => new("Hz", UnitFamily.Frequency),
-            "mhz" => unit.Trim() == "mHz"
-                ? new("mHz", UnitFamily.Frequency, Divide: 1e3, MayBeMega: true)
-                : new("MHz", UnitFamily.Frequency, 1e6),
-            "millihz" or "millihertz" => new("mHz", UnitFamily.Frequency, Divide: 1e3),
-            "khz" or "kilohertz" => new("kHz", UnitFamily.Frequency, 1e3),
-            "megahertz" => new("MHz", UnitFamily.Frequency, 1e6),
-            "ghz" or "gigahertz" => new("GHz", UnitFamily.Frequency, 1e9),
-            "rad/s" or "rad/sec" or "rads" or "rad/sekunde" or "radpersec" or "radians/s" or "radpers" => new("rad/s", UnitFamily.Frequency, Divide: 2 * Math.PI),
-            "db" or "decibel" or "dezibel" => new("dB", UnitFamily.Decibel),
-            "deg" or "degree" or "degrees" or "grad" or "\u00B0" or "altgrad" or "deg." => new("deg", UnitFamily.Angle),
-            "rad" or "radian" or "radians" or "radiant" or "bogenma\u00DF" => new("rad", UnitFamily.Angle, 180, Math.PI),
-            "ratio" or "1" or "lin" or "linear" or "abs" or "v/v" or "a/a" or "verh\u00E4ltnis" or "u/u" or "-" => new("ratio", UnitFamily.Ratio),
-            "%" or "percent" or "prozent" => new("%", UnitFamily.Ratio, Divide: 100),
-            _ => null,
-        };
-        if (plain is not null)
-            return plain;
-        if (AmplitudeUnit.TryParse(unit, out AmplitudeUnit? amplitude))
-        {
-            return amplitude!.IsLevel
-                ? new(amplitude.Name, UnitFamily.VoltageLevel)
-                : new(amplitude.Name, UnitFamily.Voltage, amplitude.Volts >= 1 ? amplitude.Volts : 1, amplitude.Volts >= 1 ? 1 : Math.Round(1 / amplitude.Volts));
-        }
-
-        // In lower case mega and milli are one; a capital M is therefore not taken for either.
-        return unit.Contains('M', StringComparison.Ordinal) ? null : Transfer(text);
+        return Frequency(unit.Trim(), text) ?? Plain(unit.Trim(), text) ?? Voltage(unit) ?? TransferUnit.Parse(unit);
     }
 
-    // Gains with a unit: ohm, S, and quotients such as mV/Pa; the prefixes are taken out, the base units stay.
-    private static UnitText? Transfer(string text)
+    private static UnitText? Frequency(string unit, string text) => text switch
     {
-        int slash = text.IndexOf('/', StringComparison.Ordinal);
-        if (slash < 0)
-        {
-            return Prefixed(text) is ("ohm" or "siemens", var scale) single
-                ? new(text, UnitFamily.Ratio, Up(scale), Down(scale))
-                : null;
-        }
+        "hz" or "hertz" or "cps" => new("Hz", UnitFamily.Frequency),
+        "uhz" or "microhertz" => new("uHz", UnitFamily.Frequency, Divide: 1e6),
+        // Some write megahertz so.
+        "mhz" when unit == "mHz" => new("mHz", UnitFamily.Frequency, Divide: 1e3) { Asked = ["mHz", "MHz"], Stated = unit },
+        "millihz" or "millihertz" => new("mHz", UnitFamily.Frequency, Divide: 1e3),
+        "khz" or "kilohertz" => new("kHz", UnitFamily.Frequency, 1e3),
+        "mhz" or "megahertz" => new("MHz", UnitFamily.Frequency, 1e6),
+        "ghz" or "gigahertz" => new("GHz", UnitFamily.Frequency, 1e9),
+        "thz" or "terahertz" => new("THz", UnitFamily.Frequency, 1e12),
+        "rad/s" or "rad/sec" or "rads" or "rad/sekunde" or "radpersec" or "radians/s" or "radpers" => new("rad/s", UnitFamily.Frequency, Divide: 2 * Math.PI),
+        "krad/s" or "krad/sec" or "krads" => new("krad/s", UnitFamily.Frequency, 1e3, 2 * Math.PI),
+        "mrad/s" or "mrad/sec" => unit.StartsWith('M')
+            ? new("Mrad/s", UnitFamily.Frequency, 1e6, 2 * Math.PI)
+            : new("mrad/s", UnitFamily.Frequency, Divide: 2e3 * Math.PI),
+        _ => null,
+    };
 
-        if (Prefixed(text[..slash]) is not (string over, var overPower) || Prefixed(text[(slash + 1)..]) is not (string under, var underPower))
+    private static UnitText? Plain(string unit, string text) => text switch
+    {
+        "db" or "decibel" or "dezibel" or "db20" => new("dB", UnitFamily.Decibel),
+        "np" or "neper" => new("Np", UnitFamily.Decibel, DecibelsPerNeper),
+        "dbr" or "dbc" or "dbrel" => new("dB", UnitFamily.Decibel) { Asked = ["dB"], Stated = unit },
+        "deg" or "degree" or "degrees" or "grad" or "\u00B0" or "altgrad" or "deg." => new("deg", UnitFamily.Angle),
+        "rad" or "radian" or "radians" or "radiant" or "bogenma\u00DF" => new("rad", UnitFamily.Angle, 180, Math.PI),
+        "mrad" when unit[0] == 'm' => new("mrad", UnitFamily.Angle, 180, 1e3 * Math.PI),
+        "ratio" or "1" or "lin" or "linear" or "abs" or "v/v" or "a/a" or "verh\u00E4ltnis" or "u/u" or "-" => new("ratio", UnitFamily.Ratio),
+        "%" or "percent" or "prozent" => new("%", UnitFamily.Ratio, Divide: 100),
+        "ppm" => new("ppm", UnitFamily.Ratio, Divide: 1e6) { Asked = ["ppm"], Stated = unit },
+        _ => null,
+    };
+
+    private static UnitText? Voltage(string unit)
+    {
+        if (!AmplitudeUnit.TryParse(unit, out AmplitudeUnit? amplitude))
             return null;
-        int power = overPower - underPower;
-        return new(over + "/" + under is var name && power == 0 ? name : text, UnitFamily.Ratio, Up(power), Down(power));
-    }
-
-    private static double Up(int power) => power > 0 ? double.Parse("1e" + power.ToString(CultureInfo.InvariantCulture), CultureInfo.InvariantCulture) : 1;
-
-    private static double Down(int power) => power < 0 ? double.Parse("1e" + (-power).ToString(CultureInfo.InvariantCulture), CultureInfo.InvariantCulture) : 1;
-
-    private static (string Base, int Power)? Prefixed(string text)
-    {
-        foreach (string known in (ReadOnlySpan<string>)["v", "pa", "a", "ohm", "siemens", "n", "m/s", "m", "g", "w", "c", "t"])
-        {
-            if (!text.EndsWith(known, StringComparison.Ordinal))
-                continue;
-            int? power = text[..^known.Length] switch { "" => 0, "m" => -3, "u" => -6, "n" => -9, "p" => -12, "k" => 3, _ => null };
-            if (power is not null)
-                return (known, power.Value);
-        }
-
-        return null;
+        if (amplitude!.IsLevel)
+            return new(amplitude.Name, UnitFamily.VoltageLevel);
+        bool large = amplitude.Volts >= 1;
+        var found = new UnitText(amplitude.Name, UnitFamily.Voltage, large ? amplitude.Volts : 1, large ? 1 : Math.Round(1 / amplitude.Volts));
+        // Displays without small letters write millivolts so.
+        return amplitude.Name[0] == 'M' ? found with { Asked = ["m" + amplitude.Name[1..], amplitude.Name], Stated = unit.Trim() } : found;
     }
 }

@@ -20,8 +20,15 @@ internal static class NumberText
     // Longer than any number that an instrument prints; bounds the cost of one field.
     private const int LongestNumber = 128;
 
+    // Instruments that reckon in single precision print 9.9E37 as 9.9000003E37.
+    private const double SentinelTolerance = 1e-6;
+
     /// <summary>Sentinels of SCPI instruments: +-9.9E37 is overload (infinity), 9.91E37 is not a number.</summary>
-    private static bool IsSentinel(double value) => Math.Abs(value) is 9.9e37 or 9.91e37;
+    private static bool IsSentinel(double value)
+    {
+        double size = Math.Abs(value);
+        return size > 9.8e37 && (Math.Abs(size / 9.9e37 - 1) <= SentinelTolerance || Math.Abs(size / 9.91e37 - 1) <= SentinelTolerance);
+    }
 
     public static NumberKind Read(ReadOnlySpan<char> field, bool decimalComma, out double value)
     {

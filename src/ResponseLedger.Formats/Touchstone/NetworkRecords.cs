@@ -32,6 +32,7 @@ internal sealed class NetworkRecords
     private bool recordBad;
     private bool skipping;
     private bool noise;
+    private bool overlong;
     private double lastHz = double.NegativeInfinity;
 
     public NetworkRecords(NetworkShape shape, OptionLine option, string parameter, int pair, bool mayHoldNoise, IssueList issues, List<ReadNote> notes)
@@ -64,6 +65,12 @@ internal sealed class NetworkRecords
     {
         bool good = Numbers(line, number);
         int count = numbers.Count;
+        if (overlong)
+        {
+            RefuseLine(number);
+            return;
+        }
+
         if (noise || IsNoise(count))
         {
             ReadNoise(count, number);
@@ -104,6 +111,15 @@ internal sealed class NetworkRecords
     {
         if (taken > 0)
             CutShort();
+    }
+
+    // Such a line belongs to no record; the next line with a frequency begins one again.
+    private void RefuseLine(int number)
+    {
+        issues.Add(number, null, ReadCodes.ExtraFields, $"The line holds more than {MostNumbers} numbers, but a record has {shape.NumberCount}; begin every record on a line of its own.");
+        taken = 0;
+        skipping = true;
+        RecordCount++;
     }
 
     private void BeginRecord(int number)
@@ -186,10 +202,14 @@ internal sealed class NetworkRecords
             issues.Add(number, null, count < NoiseNumbers ? ReadCodes.ShortRow : ReadCodes.ExtraFields, $"A line of the noise block has {count} numbers where {NoiseNumbers} are due; correct it.");
     }
 
+    // A few more than are due, so that a stray number is still told with its count; never as many as a hostile line holds.
+    private int MostNumbers => shape.NumberCount + 16;
+
     private bool Numbers(ReadOnlySpan<char> line, int number)
     {
         numbers.Clear();
         columns.Clear();
+        overlong = false;
         bool good = true;
         int at = 0;
         while (true)
@@ -197,6 +217,12 @@ internal sealed class NetworkRecords
             int start = line[at..].IndexOfAnyExcept(" \t\f\v");
             if (start < 0)
                 return good;
+            if (numbers.Count == MostNumbers)
+            {
+                overlong = true;
+                return false;
+            }
+
             at += start;
             int length = line[at..].IndexOfAny(" \t\f\v");
             ReadOnlySpan<char> token = length < 0 ? line[at..] : line.Slice(at, length);

@@ -9,16 +9,24 @@ namespace ResponseLedger.Formats.Touchstone;
 /// <param name="Parameter">S, Y, Z, H or G.</param>
 /// <param name="Form">The pair that the format names.</param>
 /// <param name="ReferenceOhm">Reference resistance in ohm.</param>
-/// <param name="TokenCount">How many words the line has.</param>
-internal sealed record OptionLine(double HzPerUnit, string Unit, char Parameter, SweepForm Form, double ReferenceOhm, int TokenCount)
+/// <param name="NamesNetwork">Whether it says more than units: a parameter, a resistance, RI or MA.</param>
+internal sealed record OptionLine(double HzPerUnit, string Unit, char Parameter, SweepForm Form, double ReferenceOhm, bool NamesNetwork)
 {
+    private const int LongestLine = 1024;
+
     /// <summary>Reads what stands after the #.</summary>
     /// <param name="text">The line after its #, without its comment.</param>
     /// <param name="problem">What is wrong with it; null when it was read.</param>
     public static OptionLine? Parse(ReadOnlySpan<char> text, out string? problem)
     {
-        var option = new OptionLine(1e9, "GHz", 'S', SweepForm.RatioPhase, 50, 0);
+        var option = new OptionLine(1e9, "GHz", 'S', SweepForm.RatioPhase, 50, false);
         problem = null;
+        if (text.Length > LongestLine)
+        {
+            problem = $"The option line has more than {LongestLine} characters; write for example # Hz S RI R 50.";
+            return null;
+        }
+
         string[] words = text.ToString().Split((char[]?)null, StringSplitOptions.RemoveEmptyEntries);
         for (int i = 0; i < words.Length; i++)
         {
@@ -38,19 +46,19 @@ internal sealed record OptionLine(double HzPerUnit, string Unit, char Parameter,
                     option = option with { HzPerUnit = 1e9, Unit = "GHz" };
                     break;
                 case "S" or "Y" or "Z" or "H" or "G":
-                    option = option with { Parameter = word[0] };
+                    option = option with { Parameter = word[0], NamesNetwork = true };
                     break;
                 case "RI":
-                    option = option with { Form = SweepForm.RealImaginary };
+                    option = option with { Form = SweepForm.RealImaginary, NamesNetwork = true };
                     break;
                 case "MA":
-                    option = option with { Form = SweepForm.RatioPhase };
+                    option = option with { Form = SweepForm.RatioPhase, NamesNetwork = true };
                     break;
                 case "DB":
                     option = option with { Form = SweepForm.LevelPhase };
                     break;
                 case "R" when i + 1 < words.Length && double.TryParse(words[i + 1], NumberStyles.Float, CultureInfo.InvariantCulture, out double ohm) && double.IsFinite(ohm) && ohm > 0:
-                    option = option with { ReferenceOhm = ohm };
+                    option = option with { ReferenceOhm = ohm, NamesNetwork = true };
                     i++;
                     break;
                 case "R":
@@ -63,6 +71,6 @@ internal sealed record OptionLine(double HzPerUnit, string Unit, char Parameter,
             }
         }
 
-        return option with { TokenCount = words.Length };
+        return option;
     }
 }

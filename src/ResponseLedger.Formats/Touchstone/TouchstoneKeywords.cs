@@ -9,6 +9,9 @@ internal sealed class TouchstoneKeywords(IssueList issues)
     private int referenceCount;
     private bool inReference;
 
+    // Room for the resistances of every port; a longer line is no keyword.
+    private const int LongestLine = 16_384;
+
     public bool IsVersion2 { get; private set; }
 
     public int? Ports { get; private set; }
@@ -139,6 +142,12 @@ internal sealed class TouchstoneKeywords(IssueList issues)
 
     private static string? Part(ReadOnlySpan<char> line, out string value)
     {
+        if (line.Length > LongestLine)
+        {
+            value = "";
+            return null;
+        }
+
         int close = line.IndexOf(']');
         value = close < 0 ? "" : line[(close + 1)..].Trim().ToString();
         return close < 0 || close > 64 ? null : line[1..close].Trim().ToString().ToLowerInvariant();

@@ -32,10 +32,22 @@ internal static class TouchstoneName
                 continue;
             if (line.StartsWith("[version]", StringComparison.OrdinalIgnoreCase))
                 return true;
-            // A comment of a delimited file begins with # too: only an option line of known words counts.
-            return line[0] == '#' && line.Length < 200 && OptionLine.Parse(line[1..], out _) is { } option && option.TokenCount >= 2;
+            // A comment of a delimited file begins with # too, and may name units: only an option line that says more counts.
+            return line[0] == '#' && line.Length < 200 && OptionLine.Parse(line[1..], out _) is { NamesNetwork: true } && NextIsBlankParted(lines);
         }
 
         return false;
+    }
+
+    private static bool NextIsBlankParted(LineWalk lines)
+    {
+        while (lines.MoveNext())
+        {
+            ReadOnlySpan<char> line = lines.Line.Trim();
+            if (!line.IsEmpty && line[0] is not ('!' or '#'))
+                return line[0] == '[' || !line.ContainsAny(',', ';');
+        }
+
+        return true;
     }
 }

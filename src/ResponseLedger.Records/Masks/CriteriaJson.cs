@@ -14,7 +14,7 @@ internal static class CriteriaJson
     {
         if (ObjectReader.Open(json, path, problems) is not { } reader)
             return null;
-        var name = reader.Text("name", ObjectReader.LongestName);
+        var name = reader.Name("name");
         var quantity = reader.Word("quantity", MaskWords.Quantities);
         var side = reader.Word("side", MaskWords.Sides);
         var basis = reader.Word("basis", MaskWords.Bases);
@@ -34,9 +34,9 @@ internal static class CriteriaJson
     {
         if (ObjectReader.Open(json, path, problems) is not { } reader)
             return null;
-        var name = reader.Text("name", ObjectReader.LongestName);
+        var name = reader.Name("name");
         var call = MeasureCallJson.Read(reader);
-        var output = reader.Text("output", ObjectReader.LongestName);
+        var output = reader.Name("output");
         var min = reader.OptionalNumber("min");
         var max = reader.OptionalNumber("max");
         var scale = reader.OptionalNumber("scale");

@@ -52,7 +52,7 @@ public sealed record MaskDocument(string Title, Mask Mask)
     /// <summary>Reads the mask's members of an object that may have others; the caller finishes the object.</summary>
     internal static MaskDocument? Read(ObjectReader reader)
     {
-        var title = reader.Text("title", ObjectReader.LongestName);
+        var title = reader.Name("title");
         var limits = reader.Items("limits", CriteriaJson.ReadLimit);
         var requirements = reader.Items("requirements", CriteriaJson.ReadRequirement);
         return title is null ? null : new MaskDocument(title, new Mask(limits, requirements));

@@ -63,7 +63,7 @@ public static class MeasureCallJson
     /// <summary>Reads the members <c>measure</c> and <c>parameters</c> of an object that may have others.</summary>
     internal static MeasureCall? Read(ObjectReader reader)
     {
-        var measure = reader.Text("measure", ObjectReader.LongestName);
+        var measure = reader.Name("measure");
         var numbers = new SortedDictionary<string, double>(StringComparer.Ordinal);
         ReferenceLevel? reference = null;
 
@@ -74,7 +74,9 @@ public static class MeasureCallJson
                 reference = ReferenceLevelJson.Read(level);
             foreach (var name in parameters.Names.Where(name => name != "reference"))
             {
-                if (parameters.OptionalNumber(name) is { } number)
+                if (TextRules.AgainstName(name) is { } problem)
+                    parameters.Add(name, problem);
+                else if (parameters.OptionalNumber(name) is { } number)
                     numbers[name] = number;
             }
         }

@@ -92,6 +92,17 @@ internal sealed class ObjectReader
         return null;
     }
 
+    /// <summary>A name that is there, not blank, and one plain line; else a problem and null.</summary>
+    public string? Name(string name)
+    {
+        if (Text(name, LongestName) is not { } text)
+            return null;
+        if (TextRules.AgainstName(text) is not { } problem)
+            return text;
+        Add(name, problem);
+        return null;
+    }
+
     /// <summary>A text, empty or not; null where it is left out, or wrong and told.</summary>
     public string? OptionalText(string name, int longest)
     {

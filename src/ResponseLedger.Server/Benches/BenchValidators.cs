@@ -1,5 +1,6 @@
 using System.Text.RegularExpressions;
 using FluentValidation;
+using ResponseLedger.Records;
 using ResponseLedger.Server.Devices;
 
 namespace ResponseLedger.Server.Benches;
@@ -28,8 +29,8 @@ internal sealed class BenchChangeValidator : AbstractValidator<BenchChange>
             .WithMessage($"A noise floor lies between {LowestFloorDb} and {HighestFloorDb} dB; null where none is stated.");
         RuleFor(c => c.Remark).Must(remark => remark.Value is null || remark.Value.Length <= LongestRemark)
             .WithMessage($"At most {LongestRemark} characters.");
-        RuleFor(c => c.Remark).Must(remark => remark.Value is null || !remark.Value.Contains('\0', StringComparison.Ordinal))
-            .WithMessage("A zero character cannot stand here.");
+        RuleFor(c => c.Remark).Must(remark => remark.Value is null || TextRules.AgainstProse(remark.Value) is null)
+            .WithMessage((_, remark) => TextRules.AgainstProse(remark.Value!)!);
     }
 
     private static string? Complaint(string pattern)
@@ -38,8 +39,8 @@ internal sealed class BenchChangeValidator : AbstractValidator<BenchChange>
             return "A pattern must not be blank; null goes back to the usual rule: the part before the first underscore.";
         if (pattern.Length > LongestPattern)
             return $"At most {LongestPattern} characters.";
-        if (pattern.Contains('\0', StringComparison.Ordinal))
-            return "A zero character cannot stand here.";
+        if (TextRules.AgainstName(pattern) is { } problem)
+            return problem;
         try
         {
             var regex = new Regex(pattern, RegexOptions.CultureInvariant, LongestMatch);

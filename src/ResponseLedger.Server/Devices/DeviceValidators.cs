@@ -1,4 +1,5 @@
 using FluentValidation;
+using ResponseLedger.Records;
 
 namespace ResponseLedger.Server.Devices;
 
@@ -11,34 +12,22 @@ internal static class TypedText
     /// <summary>Longest reason, after trimming.</summary>
     public const int LongestReason = 1_000;
 
-    /// <summary>There, not blank, not longer than said, without control characters.</summary>
+    /// <summary>There, not blank, not longer than said, and one plain line.</summary>
     public static IRuleBuilderOptions<T, string?> IsName<T>(this IRuleBuilder<T, string?> rule, int longest = LongestName)
         => rule
             .Must(text => !string.IsNullOrWhiteSpace(text)).WithMessage("This text is needed and must not be blank.")
             .Must(text => text is null || text.Trim().Length <= longest).WithMessage($"At most {longest} characters.")
-            .Must(text => text is null || !text.Trim().Any(char.IsControl)).WithMessage("Line breaks, tabs and other control characters cannot stand here.")
-            .Must(IsWhole).WithMessage("This text holds half of a surrogate pair.");
+            .HasNothingAgainst(text => TextRules.AgainstName(text.Trim()));
 
     /// <summary>A reason: there, not blank, not longer than said; line breaks may stand in it.</summary>
     public static IRuleBuilderOptions<T, string?> IsReason<T>(this IRuleBuilder<T, string?> rule)
         => rule
             .Must(text => !string.IsNullOrWhiteSpace(text)).WithMessage("A reason is needed: it stays in the record.")
             .Must(text => text is null || text.Trim().Length <= LongestReason).WithMessage($"At most {LongestReason} characters.")
-            .Must(text => text is null || !text.Any(c => char.IsControl(c) && c is not ('\n' or '\r' or '\t'))).WithMessage("Control characters other than line breaks and tabs cannot stand here.")
-            .Must(IsWhole).WithMessage("This text holds half of a surrogate pair.");
+            .HasNothingAgainst(TextRules.AgainstProse);
 
-    private static bool IsWhole(string? text)
-    {
-        for (var i = 0; text is not null && i < text.Length; i++)
-        {
-            if (char.IsHighSurrogate(text[i]) && i + 1 < text.Length && char.IsLowSurrogate(text[i + 1]))
-                i++;
-            else if (char.IsSurrogate(text[i]))
-                return false;
-        }
-
-        return true;
-    }
+    private static IRuleBuilderOptions<T, string?> HasNothingAgainst<T>(this IRuleBuilder<T, string?> rule, Func<string, string?> against)
+        => rule.Must(text => text is null || against(text) is null).WithMessage((_, text) => against(text!)!);
 }
 
 internal sealed class NewDeviceValidator : AbstractValidator<NewDevice>

@@ -23,9 +23,11 @@ internal static class DevicesRoutes
         devices.MapGet("/{id:guid}", ReadDevices.GetAsync)
             .WithName("getDevice").WithSummary("One device with its conditions, their masks and golden runs, and its settings.")
             .ProducesProblem(StatusCodes.Status404NotFound);
-        devices.MapPatch("/{id:guid}", WriteDevices.ChangeAsync).Validated<DeviceChange>().RequireAuthorization(Policies.Engineer)
-            .WithName("changeDevice").WithSummary("Changes the title or the rules of a device; members left out stay as they are.")
-            .ProducesProblem(StatusCodes.Status404NotFound).ProducesProblem(StatusCodes.Status409Conflict);
+
+        // The handler asks for quality where a rule of signing is to change, and for an engineer where anything else is.
+        devices.MapPatch("/{id:guid}", WriteDevices.ChangeAsync).Validated<DeviceChange>().RequireAuthorization(Policies.Sign)
+            .WithName("changeDevice").WithSummary("Changes the title or the rules of a device; members left out stay as they are. The rules of signing are the role quality's, the others an engineer's.")
+            .ProducesProblem(StatusCodes.Status403Forbidden).ProducesProblem(StatusCodes.Status404NotFound).ProducesProblem(StatusCodes.Status409Conflict);
 
         devices.MapGet("/{id:guid}/conditions", ReadDevices.ConditionsAsync)
             .WithName("listConditions").WithSummary("The sweeps that the device's test requires, in their order.")

@@ -60,6 +60,7 @@ internal static class WriteDevices
     public static async Task<Ok<DeviceView>> ChangeAsync(
         Guid id, DeviceChange request, ClaimsPrincipal user, ActRunner acts, ResponseLedgerContext db, CancellationToken cancellationToken)
     {
+        RefuseRole(request, user);
         var present = await db.DeviceSettings.AsNoTracking().Where(s => s.DeviceId == id).OrderByDescending(s => s.Number).FirstOrDefaultAsync(cancellationToken)
             ?? throw new RefusedException(new NothingThere("device"));
         var (before, after) = (Told(present), Told(Changed(present, request, present.Id, present.At, present.ById)));
@@ -106,6 +107,16 @@ internal static class WriteDevices
             return new ConditionAdded(condition.Id, id, name);
         }, cancellationToken);
         return TypedResults.Created($"/api/devices/{id}/conditions", added);
+    }
+
+    // Whoever signs must not be able to lift the rules that they sign under.
+    private static void RefuseRole(DeviceChange request, ClaimsPrincipal user)
+    {
+        if ((request.SigningNeedsQuality ?? request.SigningNeedsTwo ?? request.SigningExcludesOwnRuns) is not null && !CurrentActor.Holds(user, Roles.Quality))
+            throw new RefusedException(new NotAllowed("Who may sign is set by the role quality; an engineer changes the other settings."));
+        if ((request.Title is not null || request.DecisionRule is not null || request.Inverting is not null || request.RetestsAllowed.IsGiven)
+            && !CurrentActor.Holds(user, Roles.Engineer))
+            throw new RefusedException(new NotAllowed("The role quality sets who may sign; the other settings are an engineer's."));
     }
 
     private static DeviceSetting Changed(DeviceSetting present, DeviceChange change, Guid id, DateTimeOffset at, Guid byId) => new()

@@ -8,16 +8,16 @@ internal static class EmptyAnswers
     public static Task FillAsync(StatusCodeContext context)
     {
         var http = context.HttpContext;
-        var refusal = http.Response.StatusCode switch
+        Refusal refusal = http.Response.StatusCode switch
         {
             StatusCodes.Status404NotFound => new Answer(404, "notFound", "There is nothing at this address."),
             StatusCodes.Status405MethodNotAllowed => new Answer(405, "methodNotAllowed", $"This address does not take {http.Request.Method}; the header Allow names what it takes."),
-            StatusCodes.Status413PayloadTooLarge => new Answer(413, "tooLarge", "The request is larger than this server takes. Send fewer files at once."),
+            StatusCodes.Status413PayloadTooLarge => new TooLarge(RequestGuard.TakesFiles(http.Request)),
             StatusCodes.Status415UnsupportedMediaType => new Answer(415, "unsupportedMediaType", "This address does not take a body of this media type."),
-            StatusCodes.Status500InternalServerError => new Answer(500, "fault", "The server failed. Nothing of the request was kept; try it again."),
+            StatusCodes.Status500InternalServerError => new Fault(),
             var status => new Answer(status, "refused", "The request was refused."),
         };
-        return refusal.WriteAsync(http);
+        return Answer.WriteAsync(refusal, http);
     }
 }
 
@@ -25,10 +25,13 @@ internal static class EmptyAnswers
 internal sealed record Answer(int Status, string Code, string Sentence) : Refusal(Status, Code, Sentence)
 {
     /// <summary>Writes it.</summary>
-    public async Task WriteAsync(HttpContext http)
+    public Task WriteAsync(HttpContext http) => WriteAsync(this, http);
+
+    /// <summary>Writes a refusal.</summary>
+    public static async Task WriteAsync(Refusal refusal, HttpContext http)
     {
-        http.Response.StatusCode = Status;
+        http.Response.StatusCode = refusal.Status;
         await http.RequestServices.GetRequiredService<IProblemDetailsService>()
-            .WriteAsync(new ProblemDetailsContext { HttpContext = http, ProblemDetails = RefusalMapping.Describe(this) });
+            .WriteAsync(new ProblemDetailsContext { HttpContext = http, ProblemDetails = RefusalMapping.Describe(refusal) });
     }
 }

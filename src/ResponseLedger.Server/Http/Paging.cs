@@ -12,6 +12,9 @@ internal static class Paging
     public const int UsualLimit = 50;
     public const int HighestLimit = 500;
 
+    // A cursor that somebody made up may say anything; one that a list gave has every member, and says it in exactly these bytes.
+    private static readonly JsonSerializerOptions Strict = new() { RespectNullableAnnotations = true, RespectRequiredConstructorParameters = true };
+
     /// <summary>The number of items to give.</summary>
     /// <exception cref="RefusedException">The limit is outside 1..500.</exception>
     public static int Limit(int? limit) => limit switch
@@ -30,7 +33,9 @@ internal static class Paging
             return null;
         try
         {
-            return JsonSerializer.Deserialize<T>(Base64Url.DecodeFromChars(cursor)) ?? throw new JsonException();
+            var bytes = Base64Url.DecodeFromChars(cursor);
+            var key = JsonSerializer.Deserialize<T>(bytes, Strict) ?? throw new JsonException();
+            return Write(key).AsSpan().SequenceEqual(bytes) && !HoldsZero(bytes) ? key : throw new JsonException();
         }
         catch (Exception exception) when (exception is FormatException or JsonException)
         {
@@ -42,7 +47,21 @@ internal static class Paging
     public static Page<TItem> Cut<TRow, TItem>(IReadOnlyList<TRow> rows, int limit, Func<TRow, TItem> show, Func<TRow, object> key)
     {
         var kept = rows.Take(limit).ToList();
-        var next = rows.Count > limit ? Base64Url.EncodeToString(JsonSerializer.SerializeToUtf8Bytes(key(kept[^1]))) : null;
+        var next = rows.Count > limit ? Base64Url.EncodeToString(Write(key(kept[^1]))) : null;
         return new Page<TItem>([.. kept.Select(show)], next);
     }
+
+    private static byte[] Write(object key) => JsonSerializer.SerializeToUtf8Bytes(key, key.GetType(), Strict);
+
+    // The database's text has no zero character.
+    private static bool HoldsZero(byte[] json)
+    {
+        using var document = JsonDocument.Parse(json);
+        return document.RootElement.ValueKind == JsonValueKind.Object
+            ? document.RootElement.EnumerateObject().Any(member => HoldsZero(member.Value))
+            : HoldsZero(document.RootElement);
+    }
+
+    private static bool HoldsZero(JsonElement value)
+        => value.ValueKind == JsonValueKind.String && value.GetString()!.Contains('\0', StringComparison.Ordinal);
 }

@@ -11,6 +11,9 @@ internal abstract record Refusal(int Status, string Code, string Sentence)
 {
     /// <summary>Problems by field, for 422; keys in the notation of the request, such as <c>limits[0].name</c>.</summary>
     public IReadOnlyDictionary<string, string[]> Errors { get; init; } = new Dictionary<string, string[]>();
+
+    /// <summary>A finer word beside the code, told as the member <c>reason</c>; null where the code says it all.</summary>
+    public string? Reason { get; init; }
 }
 
 /// <summary>There is nothing under that id.</summary>
@@ -25,6 +28,18 @@ internal sealed record FieldRefused : Refusal
     public FieldRefused(IReadOnlyDictionary<string, string[]> errors)
         : base(StatusCodes.Status422UnprocessableEntity, "invalid", "Some fields cannot stand as they are; each is named with the way to mend it.") => Errors = errors;
 }
+
+/// <summary>The server failed: no expected "no", and it stands in the log.</summary>
+internal sealed record Fault()
+    : Refusal(StatusCodes.Status500InternalServerError, "fault", "The server failed, and its log tells how. Look whether the request was done, and send it again if not.");
+
+/// <summary>The body is larger than its address takes.</summary>
+internal sealed record TooLarge(bool HoldsFiles) : Refusal(
+    StatusCodes.Status413PayloadTooLarge,
+    "tooLarge",
+    HoldsFiles
+        ? $"The request is larger than {RequestGuard.UploadBodyBytes >> 20} MiB, the most that this server takes at once. Send fewer files at once."
+        : $"The body is larger than {RequestGuard.UsualBodyBytes >> 20} MiB, the most that this address takes.");
 
 /// <summary>The signed-in person's roles do not reach, for a reason that the route alone does not tell.</summary>
 internal sealed record NotAllowed(string Why) : Refusal(StatusCodes.Status403Forbidden, "notAllowed", Why);

@@ -13,6 +13,8 @@ internal sealed class RefusalMapping(IProblemDetailsService problems) : IExcepti
         var problem = Problem(refusal.Status, refusal.Code, refusal.Sentence);
         if (refusal.Errors.Count > 0)
             problem.Extensions["errors"] = refusal.Errors;
+        if (refusal.Reason is { } reason)
+            problem.Extensions["reason"] = reason;
         return problem;
     }
 
@@ -21,9 +23,12 @@ internal sealed class RefusalMapping(IProblemDetailsService problems) : IExcepti
         var problem = exception switch
         {
             RefusedException refused => Describe(refused.Refusal),
-            BadHttpRequestException { InnerException: JsonException json } when json.Path is { Length: > 1 } path =>
+
+            // An inner one is of the reader, which met no JSON at all: then no member is to blame, wherever the reading stopped.
+            BadHttpRequestException { InnerException: JsonException { InnerException: not JsonException, Path: { Length: > 1 } path } } =>
                 Describe(new FieldRefused(path.TrimStart('$', '.'), "This member has another type or form than the one expected here.")),
-            BadHttpRequestException bad => Problem(bad.StatusCode, BadRequestCode(bad.StatusCode), BadRequestSentence(bad)),
+            BadHttpRequestException { StatusCode: StatusCodes.Status413PayloadTooLarge } => Describe(new TooLarge(RequestGuard.TakesFiles(httpContext.Request))),
+            BadHttpRequestException bad => Problem(bad.StatusCode, "badRequest", BadRequestSentence(bad)),
             _ when StoreAway.Caused(exception) => Describe(new StoreAway()),
             _ => null,
         };
@@ -43,13 +48,10 @@ internal sealed class RefusalMapping(IProblemDetailsService problems) : IExcepti
         Extensions = { ["code"] = code },
     };
 
-    private static string BadRequestCode(int status) => status == StatusCodes.Status413PayloadTooLarge ? "tooLarge" : "badRequest";
-
     private static string BadRequestSentence(BadHttpRequestException bad) => bad switch
     {
-        { StatusCode: StatusCodes.Status413PayloadTooLarge } => "The request is larger than this server takes. Send fewer files at once.",
         { StatusCode: StatusCodes.Status415UnsupportedMediaType } => "The body must be JSON, sent as application/json.",
-        { InnerException: JsonException } => "The body is not well-formed JSON, or is no object.",
+        { InnerException: JsonException } => "The body is not well-formed JSON, is cut short, or is no object.",
         _ => "The request could not be read: a parameter or the body is missing or malformed.",
     };
 }

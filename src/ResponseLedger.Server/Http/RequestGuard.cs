@@ -29,11 +29,15 @@ internal sealed class RequestGuard(RequestDelegate next)
         if (!IsByBearer(request) && request.Headers[Header] != "1")
             return new Answer(400, "headerMissing", $"A request that changes something needs the header {Header}: 1.").WriteAsync(context);
 
-        if (HttpMethods.IsPost(request.Method) && (request.Path == "/api/runs" || request.Path == "/api/runs/preview")
+        if (TakesFiles(request)
             && context.Features.Get<IHttpMaxRequestBodySizeFeature>() is { IsReadOnly: false } limit)
             limit.MaxRequestBodySize = UploadBodyBytes;
         return next(context);
     }
+
+    /// <summary>Whether files are sent to this address.</summary>
+    public static bool TakesFiles(HttpRequest request)
+        => HttpMethods.IsPost(request.Method) && (request.Path == "/api/runs" || request.Path == "/api/runs/preview");
 
     /// <summary>Whether the request names itself by a bearer token; then its cookie counts for nothing.</summary>
     public static bool IsByBearer(HttpRequest request)

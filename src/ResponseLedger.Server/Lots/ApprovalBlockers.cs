@@ -3,13 +3,22 @@ using ResponseLedger.Store.Queries;
 namespace ResponseLedger.Server.Lots;
 
 /// <summary>One thing that stands against a plain approval of a lot, with the way on.</summary>
-/// <param name="Code">The code that the refusal of an approval would carry.</param>
+/// <param name="Code">A word for it; the refusal of an approval carries it as its code or, for a finer word, as its reason.</param>
 /// <param name="Sentence">What it is.</param>
 internal sealed record Blocker(string Code, string Sentence);
 
 /// <summary>What stands against an approval: the lot's page shows it, and a decision is refused by the first of it.</summary>
 internal static class ApprovalBlockers
 {
+    /// <summary>Units neither pass nor are withdrawn.</summary>
+    public const string UnitsNotPassed = "unitsNotPassed";
+
+    /// <summary>A condition has no mask, so that no unit can pass.</summary>
+    public const string NoReleasedMask = "noReleasedMask";
+
+    /// <summary>Units are under concession, so that a plain approval would pass over it.</summary>
+    public const string ConcessionNeeded = "concessionNeeded";
+
     /// <summary>What stands against a plain approval of a lot now; empty when somebody entitled may approve it.</summary>
     public static IReadOnlyList<Blocker> Of(LotHead lot)
         => lot.Decision is not null
@@ -24,14 +33,14 @@ internal static class ApprovalBlockers
         if (unreleased.Count > 0)
         {
             blockers.Add(new Blocker(
-                "noReleasedMask",
+                NoReleasedMask,
                 $"No mask is released for the condition{(unreleased.Count > 1 ? "s" : "")} {string.Join(", ", unreleased)}, so the lot can only be rejected. Release one first."));
         }
 
         if (tally.Cleared + tally.Conceded < size)
-            blockers.Add(new Blocker("unitsNotPassed", NotPassed(size, tally)));
+            blockers.Add(new Blocker(UnitsNotPassed, NotPassed(size, tally)));
         if (!underConcession && tally.Conceded > 0)
-            blockers.Add(new Blocker("concessionNeeded", $"{Units(tally.Conceded)} under concession: approve with concession instead."));
+            blockers.Add(new Blocker(ConcessionNeeded, $"{Units(tally.Conceded)} under concession: approve with concession instead."));
         if (underConcession && tally.Conceded == 0)
             blockers.Add(new Blocker("noConcession", "No unit is under concession: there is nothing to concede. Approve the lot plainly."));
         return blockers;

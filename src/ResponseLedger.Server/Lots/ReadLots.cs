@@ -37,10 +37,9 @@ internal static class ReadLots
     public static async Task<LotHead> FindAsync(ResponseLedgerContext db, Guid id, CancellationToken cancellationToken)
         => await LotHeads.FindAsync(db, id, cancellationToken) ?? throw new RefusedException(new NothingThere("lot"));
 
-    // PostgreSQL's text holds no zero byte.
     private static string? NoneIfBlank(string name, string? text)
-        => text?.Length > LongestSearch || text?.Contains('\0', StringComparison.Ordinal) == true
-            ? throw new RefusedException(new FieldRefused(name, $"At most {LongestSearch} characters, none of them zero."))
+        => text?.Length > LongestSearch
+            ? throw new RefusedException(new FieldRefused(name, $"At most {LongestSearch} characters."))
             : string.IsNullOrWhiteSpace(text) ? null : text.Trim();
 
     private sealed record LotKey(Guid Id);

@@ -21,6 +21,12 @@ internal sealed class Accounts(IPasswordHasher<Person> hasher, PasswordRules rul
     /// <summary>The end of lockout of an account that was disabled; the wrong passwords' lockouts end within minutes.</summary>
     public static readonly DateTimeOffset Disabled = DateTimeOffset.MaxValue;
 
+    /// <summary>Longest e-mail.</summary>
+    public const int LongestEmail = 256;
+
+    /// <summary>Longest printed name.</summary>
+    public const int LongestName = 200;
+
     // Without i, l, o, u, 0, 1: nothing that is misread from a console. 20 of 30 letters hold 98 bits.
     private const string OneTimeLetters = "abcdefghjkmnpqrstvwxyz23456789";
     private const long RosterLock = 0x5245_534C_5045_4F; // "RESLPEO"

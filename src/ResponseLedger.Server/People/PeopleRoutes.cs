@@ -4,6 +4,7 @@ using FluentValidation;
 using Microsoft.AspNetCore.Http.HttpResults;
 using Microsoft.EntityFrameworkCore;
 using Npgsql;
+using ResponseLedger.Server.Devices;
 using ResponseLedger.Server.Http;
 using ResponseLedger.Store;
 using ResponseLedger.Store.Acts;
@@ -11,19 +12,19 @@ using ResponseLedger.Store.Model;
 
 namespace ResponseLedger.Server.People;
 
-/// <summary>People and their roles, for managers.</summary>
+/// <summary>People and their roles, for managers; auditors see them.</summary>
 internal static class PeopleRoutes
 {
     public static void Map(IEndpointRouteBuilder api)
     {
-        var people = api.MapGroup("/people").WithTags("People").RequireAuthorization(Policies.Manage);
-        people.MapGet("", ListAsync)
+        var people = api.MapGroup("/people").WithTags("People");
+        people.MapGet("", ListAsync).RequireAuthorization(Policies.Oversee)
             .WithName("ListPeople").WithSummary("Everybody who has an account, in the order in which they were made.")
             .ProducesProblem(StatusCodes.Status422UnprocessableEntity);
-        people.MapPost("", CreateAsync).Validated<NewPerson>()
+        people.MapPost("", CreateAsync).Validated<NewPerson>().RequireAuthorization(Policies.Manage)
             .WithName("CreatePerson").WithSummary("Makes an account. Without a password a one-time password is made and told in this answer alone.")
             .ProducesProblem(StatusCodes.Status409Conflict);
-        people.MapPatch("/{id:guid}", ChangeAsync).Validated<PersonChange>()
+        people.MapPatch("/{id:guid}", ChangeAsync).Validated<PersonChange>().RequireAuthorization(Policies.Manage)
             .WithName("ChangePerson").WithSummary("Changes name or roles, disables, or resets the password to a one-time password; sessions of the person follow within a minute.")
             .ProducesProblem(StatusCodes.Status404NotFound).ProducesProblem(StatusCodes.Status409Conflict);
     }
@@ -44,11 +45,10 @@ internal static class PeopleRoutes
     {
         public NewPersonValidator()
         {
-            RuleFor(r => r.Email).Cascade(CascadeMode.Stop).NotEmpty().WithMessage("Give an e-mail.")
-                .MaximumLength(256).WithMessage("An e-mail has at most 256 characters.")
-                .EmailAddress().WithMessage("This is no e-mail address.");
-            RuleFor(r => r.Name).NotEmpty().WithMessage("Give the name as it is to be printed beside a signature.")
-                .MaximumLength(200).WithMessage("A name has at most 200 characters.");
+            RuleFor(r => r.Email).IsName(Accounts.LongestEmail).EmailAddress().WithMessage("This is no e-mail address.");
+
+            // It is printed beside signatures.
+            RuleFor(r => r.Name).IsName(Accounts.LongestName);
             RuleFor(r => r.Roles).Must(AreKnown).WithMessage(KnownRoles);
         }
     }
@@ -57,7 +57,7 @@ internal static class PeopleRoutes
     {
         public PersonChangeValidator()
         {
-            RuleFor(r => r.Name).Must(name => name is null || name.Trim().Length is > 0 and <= 200).WithMessage("A name has 1 to 200 characters.");
+            RuleFor(r => r.Name).IsName(Accounts.LongestName).When(r => r.Name is not null);
             RuleFor(r => r.Roles).Must(AreKnown).WithMessage(KnownRoles);
         }
     }
@@ -100,39 +100,57 @@ internal static class PeopleRoutes
         Guid id, PersonChange request, ClaimsPrincipal user, ActRunner acts, Accounts accounts, CancellationToken cancellationToken)
     {
         var oneTime = request.ResetPassword == true ? Accounts.OneTimePassword() : null;
-        var shown = await acts.RunAsync(CurrentActor.Of(user), async (act, ct) =>
+        try
         {
-            await Accounts.TakeTurnAsync(act, ct);
-            var person = await act.Db.Users.SingleOrDefaultAsync(p => p.Id == id, ct) ?? throw new RefusedException(new NothingThere("person"));
-            var detail = new JsonObject();
-            if (request.Name?.Trim() is { } name && name != person.DisplayName)
-            {
-                detail["name"] = new JsonObject { ["old"] = person.DisplayName, ["new"] = name };
-                person.DisplayName = name;
-            }
+            var shown = await acts.RunAsync(CurrentActor.Of(user), (act, ct) => ApplyAsync(act, id, request, oneTime, accounts, ct), cancellationToken);
+            return TypedResults.Ok(shown with { OneTimePassword = oneTime });
+        }
+        catch (NothingToChange unchanged)
+        {
+            // An entry that tells of no change would be noise in the ledger.
+            return TypedResults.Ok(unchanged.Person);
+        }
+    }
 
-            if (request.Roles is { } wanted)
-                await ChangeRolesAsync(act, person, [.. wanted.Distinct()], detail, ct);
-            if (request.Disabled is { } disable && disable != (person.LockoutEnd == Accounts.Disabled))
-            {
-                detail["disabled"] = new JsonObject { ["old"] = !disable, ["new"] = disable };
-                person.LockoutEnd = disable ? Accounts.Disabled : null;
-                person.AccessFailedCount = 0;
-                Accounts.EndSessions(person);
-            }
+    private static async Task<PersonShown> ApplyAsync(
+        Act act, Guid id, PersonChange request, string? oneTime, Accounts accounts, CancellationToken ct)
+    {
+        await Accounts.TakeTurnAsync(act, ct);
+        var person = await act.Db.Users.SingleOrDefaultAsync(p => p.Id == id, ct) ?? throw new RefusedException(new NothingThere("person"));
+        var detail = new JsonObject();
+        if (request.Name?.Trim() is { } name && name != person.DisplayName)
+        {
+            detail["name"] = new JsonObject { ["old"] = person.DisplayName, ["new"] = name };
+            person.DisplayName = name;
+        }
 
-            if (oneTime is not null)
-            {
-                detail["password"] = "reset";
-                accounts.SetPassword(person, oneTime, mustChange: true);
-            }
+        if (request.Roles is { } wanted)
+            await ChangeRolesAsync(act, person, [.. wanted.Distinct()], detail, ct);
+        if (request.Disabled is { } disable && disable != (person.LockoutEnd == Accounts.Disabled))
+        {
+            detail["disabled"] = new JsonObject { ["old"] = !disable, ["new"] = disable };
+            person.LockoutEnd = disable ? Accounts.Disabled : null;
+            person.AccessFailedCount = 0;
+            Accounts.EndSessions(person);
+        }
 
-            act.Record("person.changed", new JsonObject { ["personId"] = id.ToString(), ["email"] = person.Email }, detail);
-            await act.Db.SaveChangesAsync(ct);
-            await Accounts.RequireManagerAsync(act.Db, ct);
-            return await Shown(act.Db, act.Db.Users.Where(p => p.Id == id)).SingleAsync(ct);
-        }, cancellationToken);
-        return TypedResults.Ok(shown with { OneTimePassword = oneTime });
+        if (oneTime is not null)
+        {
+            detail["password"] = "reset";
+            accounts.SetPassword(person, oneTime, mustChange: true);
+        }
+
+        if (detail.Count == 0)
+            throw new NothingToChange(await Shown(act.Db, act.Db.Users.Where(p => p.Id == id)).SingleAsync(ct));
+        act.Record("person.changed", new JsonObject { ["personId"] = id.ToString(), ["email"] = person.Email }, detail);
+        await act.Db.SaveChangesAsync(ct);
+        await Accounts.RequireManagerAsync(act.Db, ct);
+        return await Shown(act.Db, act.Db.Users.Where(p => p.Id == id)).SingleAsync(ct);
+    }
+
+    private sealed class NothingToChange(PersonShown person) : Exception
+    {
+        public PersonShown Person { get; } = person;
     }
 
     private static async Task ChangeRolesAsync(Act act, Person person, string[] wanted, JsonObject detail, CancellationToken cancellationToken)

@@ -80,13 +80,14 @@ internal static class PeopleServices
     private static void AddPolicies(IServiceCollection services)
     {
         services.AddAuthorizationBuilder()
-            .AddPolicy(Policies.Read, policy => policy.RequireAssertion(c => Settled(c) && (IsPerson(c) || Has(c, Scopes.Read))))
+            .AddPolicy(Policies.Read, policy => policy.RequireAssertion(c => Settled(c) && (Holds(c, [.. Roles.All]) || Has(c, Scopes.Read))))
             .AddPolicy(Policies.Person, policy => policy.RequireAssertion(IsPerson))
             .AddPolicy(Policies.SendRuns, policy => policy.RequireAssertion(c => Settled(c) && (Has(c, Scopes.Runs) || Holds(c, Roles.Operator, Roles.Engineer, Roles.Quality))))
             .AddPolicy(Policies.Operate, policy => policy.RequireAssertion(c => Settled(c) && Holds(c, Roles.Operator, Roles.Engineer, Roles.Quality)))
             .AddPolicy(Policies.Engineer, policy => policy.RequireAssertion(c => Settled(c) && Holds(c, Roles.Engineer)))
             .AddPolicy(Policies.Sign, policy => policy.RequireAssertion(c => Settled(c) && Holds(c, Roles.Engineer, Roles.Quality)))
             .AddPolicy(Policies.Quality, policy => policy.RequireAssertion(c => Settled(c) && Holds(c, Roles.Quality)))
+            .AddPolicy(Policies.Oversee, policy => policy.RequireAssertion(c => Settled(c) && Holds(c, Roles.Manager, Roles.Auditor)))
             .AddPolicy(Policies.Manage, policy => policy.RequireAssertion(c => Settled(c) && Holds(c, Roles.Manager)));
     }
 

@@ -15,7 +15,7 @@ internal static class Roles
 /// <summary>Policies by what they let one do; set once on a route group or route.</summary>
 internal static class Policies
 {
-    /// <summary>Every signed-in person, and bench tokens with the scope <c>read</c>.</summary>
+    /// <summary>Every person who has a role, and bench tokens with the scope <c>read</c>.</summary>
     public const string Read = "read";
 
     /// <summary>Every signed-in person; no token. For the account itself.</summary>
@@ -35,6 +35,9 @@ internal static class Policies
 
     /// <summary>Reopen a decided lot: quality.</summary>
     public const string Quality = "quality";
+
+    /// <summary>See people and tokens: manager, and auditor, who reads everything.</summary>
+    public const string Oversee = "oversee";
 
     /// <summary>People, tokens, benches: manager.</summary>
     public const string Manage = "manage";

@@ -5,6 +5,7 @@ using Microsoft.AspNetCore.Authentication;
 using Microsoft.AspNetCore.Http.HttpResults;
 using Microsoft.AspNetCore.Identity;
 using Microsoft.EntityFrameworkCore;
+using ResponseLedger.Server.Devices;
 using ResponseLedger.Server.Http;
 using ResponseLedger.Store;
 using ResponseLedger.Store.Acts;
@@ -44,7 +45,7 @@ internal static class SessionRoutes
     {
         public SignInValidator()
         {
-            RuleFor(r => r.Email).NotEmpty().WithMessage("Give the e-mail.").MaximumLength(256).WithMessage("An e-mail has at most 256 characters.");
+            RuleFor(r => r.Email).IsName(Accounts.LongestEmail);
             RuleFor(r => r.Password).NotEmpty().WithMessage("Give the password.");
         }
     }

@@ -4,6 +4,7 @@ using FluentValidation;
 using Microsoft.AspNetCore.Http.HttpResults;
 using Microsoft.EntityFrameworkCore;
 using Npgsql;
+using ResponseLedger.Server.Devices;
 using ResponseLedger.Server.Http;
 using ResponseLedger.Store;
 using ResponseLedger.Store.Acts;
@@ -11,11 +12,12 @@ using ResponseLedger.Store.Model;
 
 namespace ResponseLedger.Server.People;
 
-/// <summary>Bench tokens, for managers.</summary>
+/// <summary>Bench tokens, for managers; auditors see them.</summary>
 internal static class TokensRoutes
 {
     private const int UsualDays = 365;
     private const int MostDays = 730;
+    private const int LongestName = 200;
 
     private static readonly Dictionary<string, string> ScopeWords = new(StringComparer.Ordinal)
     {
@@ -27,13 +29,13 @@ internal static class TokensRoutes
 
     public static void Map(IEndpointRouteBuilder api)
     {
-        var tokens = api.MapGroup("/tokens").WithTags("Tokens").RequireAuthorization(Policies.Manage);
-        tokens.MapGet("", ListAsync)
+        var tokens = api.MapGroup("/tokens").WithTags("Tokens");
+        tokens.MapGet("", ListAsync).RequireAuthorization(Policies.Oversee)
             .WithName("ListTokens").WithSummary("The bench tokens, in the order in which they were made; never their secrets.")
             .ProducesProblem(StatusCodes.Status422UnprocessableEntity);
-        tokens.MapPost("", CreateAsync).Validated<NewToken>()
+        tokens.MapPost("", CreateAsync).Validated<NewToken>().RequireAuthorization(Policies.Manage)
             .WithName("CreateToken").WithSummary("Makes a bench token and tells it, once. Without a bench its first upload binds it to one.");
-        tokens.MapDelete("/{id:guid}", RevokeAsync)
+        tokens.MapDelete("/{id:guid}", RevokeAsync).RequireAuthorization(Policies.Manage)
             .WithName("RevokeToken").WithSummary("Ends a token at once.")
             .ProducesProblem(StatusCodes.Status404NotFound);
     }
@@ -53,8 +55,9 @@ internal static class TokensRoutes
     {
         public NewTokenValidator()
         {
-            RuleFor(r => r.Name).NotEmpty().WithMessage("Give the token a name: it stands in the ledger beside what the token did.")
-                .MaximumLength(200).WithMessage("A name has at most 200 characters.");
+            // It stands in the ledger beside what the token did.
+            RuleFor(r => r.Name).IsName(LongestName);
+            RuleFor(r => r.Bench).IsName().When(r => !string.IsNullOrEmpty(r.Bench));
             RuleFor(r => r.Scopes)
                 .NotEmpty().WithMessage(KnownScopes)
                 .Must(scopes => scopes is null || scopes.All(scope => scope is not null && ScopeWords.ContainsKey(scope))).WithMessage(KnownScopes);

@@ -56,12 +56,6 @@ internal sealed record RunListQuery(
     public RunFilter ToFilter()
     {
         var errors = new Dictionary<string, string[]>(StringComparer.Ordinal);
-        foreach (var (name, text) in new[] { ("device", Device), ("lot", Lot), ("serial", Serial), ("bench", Bench), ("condition", Condition) })
-        {
-            if (text is not null && text.Any(char.IsControl))
-                errors[name] = ["Control characters stand in no name."];
-        }
-
         DateTimeOffset? from = null, to = null;
         if (From is { Length: > 0 } && !TryTime(From, ref from))
             errors["from"] = ["A time is written as RFC 3339, such as 2026-03-01T09:30:00Z."];

@@ -35,7 +35,7 @@ internal sealed record RunPlacement(Run Run, RunAssignment Assignment, string Se
         // Two at most: where the run is and where it goes.
         foreach (var lotId in lotIds.OfType<Guid>().Distinct().Order())
         {
-            var gated = await LotGate.CloseAsync(act.Db, lotId, cancellationToken);
+            var gated = await LotGate.CloseAsync(act, lotId, cancellationToken);
             if (gated is { Standing: not null })
                 throw new RefusedException(new LotIsDecided(gated.Lot.Number));
         }

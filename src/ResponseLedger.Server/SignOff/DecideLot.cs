@@ -29,8 +29,7 @@ internal static class DecideLot
         CancellationToken cancellationToken)
     {
         var setting = await SigningRules.SettingOfLotAsync(db, id, cancellationToken);
-        if (SigningRules.AgainstRole(setting, user) is { } wrongRole)
-            throw new RefusedException(wrongRole);
+        await SignerStanding.RequireAsync(db, user, SignersOf(setting), cancellationToken);
         await password.CheckAsync(user, request.Password, cancellationToken);
 
         var decision = await acts.RunAsync(CurrentActor.Of(user), (act, token) => DecideAsync(act, id, request, user, material, token), cancellationToken);
@@ -40,15 +39,16 @@ internal static class DecideLot
     private static async Task<Decision> DecideAsync(
         Act act, Guid lotId, NewDecision request, ClaimsPrincipal user, JudgingMaterial material, CancellationToken cancellationToken)
     {
-        var gated = await LotGate.CloseAsync(act.Db, lotId, cancellationToken) ?? throw new RefusedException(new NothingThere("lot"));
+        var gated = await LotGate.CloseAsync(act, lotId, cancellationToken) ?? throw new RefusedException(new NothingThere("lot"));
         if (gated.Standing is not null)
             throw new RefusedException(new LotDecided(gated.Lot.Number));
 
         var setting = await SigningRules.SettingOfLotAsync(act.Db, lotId, cancellationToken);
+        await SignerStanding.RequireAsync(act, SignersOf(setting), cancellationToken);
         _ = DecisionWords.TryParse(request.Decision, out var word);
         var standing = await LotStanding.ReadAsync(act.Db, lotId, cancellationToken);
         if (SigningRules.Against(word, gated.Lot, standing, setting) is [var blocker, ..])
-            throw new RefusedException(new StandsAgainst(blocker));
+            throw new RefusedException(StandsAgainst.Of(blocker));
 
         var evidence = await DecisionEvidence.ReadAsync(act.Db, gated.Lot, standing, cancellationToken);
         if (SigningRules.AgainstSigner(setting, user, act.ById, evidence) is { } wrongSigner)
@@ -97,4 +97,6 @@ internal static class DecideLot
         await act.SaveOrRefuseAsync(() => new LotDecided(draft.Lot.Number), cancellationToken);
         return decision;
     }
+
+    private static string[] SignersOf(DeviceSetting setting) => setting.SigningNeedsQuality ? [Roles.Quality] : [Roles.Engineer, Roles.Quality];
 }

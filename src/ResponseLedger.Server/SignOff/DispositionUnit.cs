@@ -26,10 +26,11 @@ internal static class DispositionUnit
         Act act, Guid lotId, Guid unitId, string kind, string reason, CancellationToken cancellationToken)
     {
         // Alone in the lot: it changes what a decision rests on, and its number is the next one.
-        var gated = await LotGate.CloseAsync(act.Db, lotId, cancellationToken) ?? throw new RefusedException(new NothingThere("lot"));
+        var gated = await LotGate.CloseAsync(act, lotId, cancellationToken) ?? throw new RefusedException(new NothingThere("lot"));
         if (gated.Standing is not null)
             throw new RefusedException(new LotDecided(gated.Lot.Number));
 
+        await SignerStanding.RequireAsync(act, [Roles.Engineer, Roles.Quality], cancellationToken);
         var units = (await LotStanding.ReadAsync(act.Db, lotId, cancellationToken)).Units;
         var unit = units.FirstOrDefault(u => u.UnitId == unitId) ?? throw new RefusedException(new NothingThere("unit of this lot"));
         if (unit.Passes)

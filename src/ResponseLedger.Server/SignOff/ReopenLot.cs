@@ -29,6 +29,7 @@ internal static class ReopenLot
         var conditions = await db.Conditions.Where(c => db.Lots.Any(l => l.Id == id && l.DeviceId == c.DeviceId)).Select(c => c.Id).ToListAsync(cancellationToken);
         if (conditions.Count == 0)
             throw new RefusedException(new NothingThere("lot"));
+        await SignerStanding.RequireAsync(db, user, [Roles.Quality], cancellationToken);
         await password.CheckAsync(user, request.Password, cancellationToken);
 
         var reopening = await acts.RunAsync(CurrentActor.Of(user), (act, token) => ReopenAsync(act, id, request.Reason!.Trim(), token), cancellationToken);
@@ -42,7 +43,8 @@ internal static class ReopenLot
 
     private static async Task<Reopening> ReopenAsync(Act act, Guid lotId, string reason, CancellationToken cancellationToken)
     {
-        var gated = await LotGate.CloseAsync(act.Db, lotId, cancellationToken) ?? throw new RefusedException(new NothingThere("lot"));
+        var gated = await LotGate.CloseAsync(act, lotId, cancellationToken) ?? throw new RefusedException(new NothingThere("lot"));
+        await SignerStanding.RequireAsync(act, [Roles.Quality], cancellationToken);
         if (gated.Standing is not { } standing)
             throw new RefusedException(new LotOpen(gated.Lot.Number));
 

@@ -18,8 +18,13 @@ internal sealed record OwnRuns(int Count)
 internal sealed record EvidenceChanged(string Number)
     : Refusal(StatusCodes.Status409Conflict, "evidenceChanged", $"What stands under lot {Number} has changed since it was shown to you, so nothing was signed. Look at it again, then sign.");
 
-internal sealed record StandsAgainst(Blocker Blocker)
-    : Refusal(StatusCodes.Status409Conflict, Blocker.Code, Blocker.Sentence);
+/// <summary>What stands against a decision. A lot that has no mask, or needs a concession, is told to programs as one whose units did not pass, with the finer word as the reason.</summary>
+internal sealed record StandsAgainst(string Code, string Sentence) : Refusal(StatusCodes.Status409Conflict, Code, Sentence)
+{
+    public static StandsAgainst Of(Blocker blocker) => blocker.Code is ApprovalBlockers.NoReleasedMask or ApprovalBlockers.ConcessionNeeded
+        ? new(ApprovalBlockers.UnitsNotPassed, blocker.Sentence) { Reason = blocker.Code }
+        : new(blocker.Code, blocker.Sentence);
+}
 
 internal sealed record SignerGone()
     : Refusal(StatusCodes.Status403Forbidden, "notAllowed", "Your account is no longer there.");

@@ -72,6 +72,7 @@ internal sealed class House : IAsyncDisposable
         app.UseAuthentication();
         app.UseRateLimiter();
         app.UseAuthorization();
+        app.UseMiddleware<QueryGuard>();
 
         app.MapHealth();
         app.MapShell();

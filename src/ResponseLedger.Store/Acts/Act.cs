@@ -25,7 +25,19 @@ public sealed class Act
     public Actor Actor { get; }
 
     /// <summary>The act's time, UTC, cut to microseconds; all its rows and entries carry it.</summary>
-    public DateTimeOffset At { get; }
+    public DateTimeOffset At { get; private set; }
+
+    /// <summary>
+    /// Takes the time anew. An act that waited for a lock happens when it holds it, not when it began to wait: else it would be
+    /// dated before what others did meanwhile and it rests on. Call it before any row or entry is made.
+    /// </summary>
+    /// <exception cref="InvalidOperationException">An entry with the earlier time is there already.</exception>
+    public void HappensNow()
+    {
+        if (entries.Count > 0)
+            throw new InvalidOperationException("The act has an entry already, which carries the time before.");
+        At = Microseconds.Cut(time.GetUtcNow());
+    }
 
     /// <summary>A new id in the order of time.</summary>
     public Guid NewId() => Guid.CreateVersion7(time.GetUtcNow());

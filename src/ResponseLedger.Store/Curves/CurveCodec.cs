@@ -31,7 +31,7 @@ public static class CurveCodec
     /// <param name="grid">The bytes of the frequencies.</param>
     /// <param name="planes">The bytes of the planes.</param>
     /// <param name="noiseFloorDb">The noise floor in dB that the reading went by, or null.</param>
-    public static Sweep Unpack(SweepForm form, ReadOnlySpan<byte> grid, ReadOnlySpan<byte> planes, double? noiseFloorDb = null)
+    public static Sweep Unpack(SweepForm form, ReadOnlySpan<byte> grid, ReadOnlySpan<byte> planes, double? noiseFloorDb)
     {
         var planeCount = form is SweepForm.Level or SweepForm.Ratio ? 1 : 2;
         if (grid.Length % sizeof(double) != 0 || planes.Length != planeCount * grid.Length)

@@ -51,7 +51,14 @@ public static class IntakeLookup
         limit 20
         """;
 
-    private const string LotsSql = "select id, device_id, number from lot where id = $1 or number = $2 order by device_id limit 50";
+    // Those of the device that was named come first: a number that many devices use must not push them over the edge.
+    private const string LotsSql =
+        """
+        select id, device_id, number from lot
+        where id = $1 or number = $2
+        order by device_id in (select id from device where id = $3 or part_number = $4 or (part_number = $5 and revision = $6)) desc, device_id
+        limit 50
+        """;
 
     private static readonly string ConditionsSql =
         $"""
@@ -83,7 +90,7 @@ public static class IntakeLookup
         {
             await using var batch = On(db);
             batch.Add(DevicesSql, DeviceKeys(names.Device));
-            batch.Add(LotsSql, Keys(names.Lot));
+            batch.Add(LotsSql, [.. Keys(names.Lot), .. DeviceKeys(names.Device)]);
             batch.Add(ConditionsSql, [.. DeviceKeys(names.Device), .. Keys(names.Lot), Of(Judge.EngineVersion)]);
             batch.Add(BenchesSql, [.. Keys(names.Bench), Of(names.BoundBenchId), Of(names.TokenId)]);
             await batch.PrepareAsync(cancellationToken);
@@ -113,7 +120,8 @@ public static class IntakeLookup
 
     private static NpgsqlParameter[] DeviceKeys(string? text)
     {
-        var slash = text?.LastIndexOf('/') ?? -1;
+        // At the first slash: a part number has none, and a revision may.
+        var slash = text?.IndexOf('/', StringComparison.Ordinal) ?? -1;
         return slash <= 0
             ? [.. Keys(text), OfText(null), OfText(null)]
             : [.. Keys(text), OfText(text![..slash]), OfText(text[(slash + 1)..])];

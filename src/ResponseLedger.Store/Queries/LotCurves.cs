@@ -43,16 +43,16 @@ public sealed record LotCurves(LotCondition Condition, byte[]? MaskDocument, str
             join unit u on u.id = a.unit_id
         )
         select 0 as kind, q.condition_id as id, q.name as text, null::smallint as outcome, null::bytea as grid_sha256, m.document as bytes, null::smallint as form,
-               q.mask_id, q.mask_revision, q.golden_run_id, q.golden_reading_id, d.gain_unit
+               q.mask_id, q.mask_revision, q.golden_run_id, q.golden_reading_id, d.gain_unit, null::double precision as noise_floor_db
         from asked q
         left join mask_revision m on m.mask_id = q.mask_id
         cross join chosen c
         join device d on d.id = c.device_id
         union all
-        select 1, null, null, null, g.sha256, g.planes, null, null, null, null, null, null
+        select 1, null, null, null, g.sha256, g.planes, null, null, null, null, null, null, null
         from grid g where g.sha256 in (select rd.grid_sha256 from drawn join reading rd on rd.id = drawn.reading_id)
         union all
-        select drawn.kind, drawn.run_id, drawn.serial, drawn.outcome, rd.grid_sha256, v.planes, rd.form, null, null, null, null, null
+        select drawn.kind, drawn.run_id, drawn.serial, drawn.outcome, rd.grid_sha256, v.planes, rd.form, null, null, null, null, null, rd.noise_floor_db
         from drawn
         join reading rd on rd.id = drawn.reading_id
         join curve v on v.reading_id = drawn.reading_id
@@ -91,7 +91,7 @@ public sealed record LotCurves(LotCondition Condition, byte[]? MaskDocument, str
     }
 
     private static LotCurve Unpack(RawCurve curve, FrozenDictionary<Key, byte[]> grids)
-        => new(curve.RunId, curve.Serial, curve.Outcome, CurveCodec.Unpack(curve.Form, grids[curve.Grid], curve.Planes));
+        => new(curve.RunId, curve.Serial, curve.Outcome, CurveCodec.Unpack(curve.Form, grids[curve.Grid], curve.Planes, curve.NoiseFloorDb));
 
     private static async Task<Raw> ReadRowsAsync(Npgsql.NpgsqlDataReader rows, CancellationToken cancellationToken)
     {
@@ -121,7 +121,8 @@ public sealed record LotCurves(LotCondition Condition, byte[]? MaskDocument, str
                     rows.IsDBNull(3) ? null : (Outcome)rows.GetInt16(3),
                     Key.Of(rows.GetFieldValue<byte[]>(4)),
                     (SweepForm)rows.GetInt16(6),
-                    rows.GetFieldValue<byte[]>(5)));
+                    rows.GetFieldValue<byte[]>(5),
+                    rows.IsDBNull(12) ? null : rows.GetDouble(12)));
             }
         }
 
@@ -137,7 +138,7 @@ public sealed record LotCurves(LotCondition Condition, byte[]? MaskDocument, str
 
     private sealed record Head(LotCondition Condition, byte[]? Mask, string GainUnit);
 
-    private sealed record RawCurve(bool IsGolden, Guid RunId, string Serial, Outcome? Outcome, Key Grid, SweepForm Form, byte[] Planes);
+    private sealed record RawCurve(bool IsGolden, Guid RunId, string Serial, Outcome? Outcome, Key Grid, SweepForm Form, byte[] Planes, double? NoiseFloorDb);
 
     private sealed record Raw(Head? Head, FrozenDictionary<Key, byte[]> Grids, List<RawCurve> Curves);
 }

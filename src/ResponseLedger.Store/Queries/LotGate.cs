@@ -1,4 +1,5 @@
 using Microsoft.EntityFrameworkCore;
+using ResponseLedger.Store.Acts;
 using ResponseLedger.Store.Model;
 
 namespace ResponseLedger.Store.Queries;
@@ -22,12 +23,16 @@ public static class LotGate
         return await WithStateAsync(db, lot, cancellationToken);
     }
 
-    /// <summary>For an act that decides, reopens, or changes what counts: one at a time. Null when there is no such lot.</summary>
-    public static async Task<GatedLot?> CloseAsync(ResponseLedgerContext db, Guid lotId, CancellationToken cancellationToken)
+    /// <summary>
+    /// For an act that decides, reopens, or changes what counts: one at a time. The act's time is then that at which it got the
+    /// lock, so that every run it finds was received before. Null when there is no such lot.
+    /// </summary>
+    public static async Task<GatedLot?> CloseAsync(Act act, Guid lotId, CancellationToken cancellationToken)
     {
-        ArgumentNullException.ThrowIfNull(db);
-        var lot = await db.Lots.FromSql($"select * from lot where id = {lotId} for update").AsNoTracking().SingleOrDefaultAsync(cancellationToken);
-        return await WithStateAsync(db, lot, cancellationToken);
+        ArgumentNullException.ThrowIfNull(act);
+        var lot = await act.Db.Lots.FromSql($"select * from lot where id = {lotId} for update").AsNoTracking().SingleOrDefaultAsync(cancellationToken);
+        act.HappensNow();
+        return await WithStateAsync(act.Db, lot, cancellationToken);
     }
 
     /// <summary>The decisions in force: those that no reopening undid.</summary>

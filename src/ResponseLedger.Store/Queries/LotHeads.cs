@@ -31,7 +31,7 @@ public static class LotHeads
         )
         select c.id, c.device_id, c.part_number, c.revision, s.title, c.number, c.size, c.at,
                c.decision_id, c.decision_ordinal, c.decision_kind, c.decision_reason, c.decision_at, c.decision_sha256,
-               (c.record -> 'signer' ->> 'personId')::uuid, c.record -> 'signer' ->> 'name', c.record -> 'signer' ->> 'email', c.record ->> 'meaning',
+               (c.signer ->> 'personId')::uuid, c.signer ->> 'name', c.signer ->> 'email', c.meaning,
                (select json_agg(json_build_object('Id', q.condition_id, 'Name', q.name, 'MaskId', q.mask_id, 'MaskRevision', q.mask_revision,
                        'GoldenRunId', q.golden_run_id, 'GoldenReadingId', q.golden_reading_id) order by q.ordinal)
                 from required q where q.lot_id = c.id),

@@ -7,15 +7,19 @@ namespace ResponseLedger.Store.Queries;
 /// </summary>
 internal static class LotStandingSql
 {
+    // Read in one pass and for the picked lots alone, for a record of a thousand units is long. A record is what somebody signed, whatever stands in
+    // it: PostgreSQL's text has no zero character, and its JSON would refuse the whole record for one of them.
+    private const string RecordJson = @"replace(convert_from(p.record, 'UTF8'), '\u0000', '\ufffd')::json";
+
     /// <summary>Columns of <c>chosen</c> for lots that <paramref name="which"/> picks; parameters of the filter are the caller's.</summary>
     /// <param name="which">Everything after <c>from lot l join device dev ...</c>: conditions, order and limit.</param>
     public static string Chosen(string which) =>
         $"""
-         with chosen as materialized (
+         with picked as materialized (
              select l.id, l.device_id, l.number, l.size, l.at, dev.part_number, dev.revision,
                     decided.id as decision_id, decided.ordinal as decision_ordinal, decided.kind as decision_kind, decided.reason as decision_reason,
                     decided.at as decision_at, decided.sha256 as decision_sha256,
-                    convert_from(decided.record, 'UTF8')::jsonb as record
+                    decided.record
              from lot l
              join device dev on dev.id = l.device_id
              left join lateral (
@@ -23,6 +27,11 @@ internal static class LotStandingSql
                  where d.lot_id = l.id and not exists (select 1 from reopening undone where undone.decision_id = d.id)
                  order by d.ordinal desc limit 1) decided on true
              {which}
+         ),
+         chosen as materialized (
+             select p.*, said.signer, said.meaning, said.conditions
+             from picked p
+             left join lateral json_to_record({RecordJson}) as said(signer json, meaning text, conditions json) on true
          ),
          """;
 
@@ -50,7 +59,7 @@ internal static class LotStandingSql
             select c.id, k.id, k.ordinal, k.name, (pinned ->> 'maskRevisionId')::uuid, (pinned ->> 'maskRevision')::int,
                    (pinned ->> 'goldenRunId')::uuid, (pinned ->> 'goldenReadingId')::uuid, null
             from chosen c
-            cross join lateral jsonb_array_elements(c.record -> 'conditions') pinned
+            cross join lateral json_array_elements(c.conditions) pinned
             join condition k on k.id = (pinned ->> 'conditionId')::uuid
             where c.decision_id is not null
         ),

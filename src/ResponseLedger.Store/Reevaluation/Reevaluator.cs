@@ -135,7 +135,7 @@ public sealed class Reevaluator(
             from reading in db.Readings
             join curve in db.Curves on reading.Id equals curve.ReadingId
             where ids.Contains(reading.Id)
-            select new { reading.Id, reading.Form, reading.GridSha256, curve.Planes }).AsNoTracking().ToListAsync(cancellationToken);
+            select new { reading.Id, reading.Form, reading.GridSha256, reading.NoiseFloorDb, curve.Planes }).AsNoTracking().ToListAsync(cancellationToken);
         var keys = curves.Select(c => Convert.ToHexString(c.GridSha256)).Distinct().Select(Convert.FromHexString).ToList();
         var grids = await db.Grids.AsNoTracking().Where(g => keys.Contains(g.Sha256))
             .ToDictionaryAsync(g => Convert.ToHexString(g.Sha256), g => g.Planes, cancellationToken);
@@ -145,7 +145,7 @@ public sealed class Reevaluator(
         {
             try
             {
-                var sweep = CurveCodec.Unpack((SweepForm)curve.Form, grids[Convert.ToHexString(curve.GridSha256)], curve.Planes);
+                var sweep = CurveCodec.Unpack((SweepForm)curve.Form, grids[Convert.ToHexString(curve.GridSha256)], curve.Planes, curve.NoiseFloorDb);
                 judged.Add(new JudgedReading(curve.Id, lots[curve.Id], Judge.Evaluate(sweep, by)));
             }
             catch (Exception exception) when (exception is not OperationCanceledException)

@@ -13,16 +13,16 @@ public sealed class DeviceSettingsTests(Lab lab)
     public async Task What_is_left_out_of_a_change_stays_and_an_explicit_null_clears()
     {
         var device = await lab.NewDeviceAsync();
-        var engineer = await lab.SignInAsync("engineer");
+        var manager = await lab.SignInAsync("manager");
 
-        await (await engineer.PatchAsJsonAsync($"/api/devices/{device.Id}", new { retestsAllowed = 2, signingNeedsQuality = true })).ShouldBeAsync(HttpStatusCode.OK);
-        var second = await (await engineer.PatchAsJsonAsync($"/api/devices/{device.Id}", new { title = "New title", inverting = true })).ShouldBeAsync(HttpStatusCode.OK);
+        await (await manager.PatchAsJsonAsync($"/api/devices/{device.Id}", new { retestsAllowed = 2, signingNeedsQuality = true })).ShouldBeAsync(HttpStatusCode.OK);
+        var second = await (await manager.PatchAsJsonAsync($"/api/devices/{device.Id}", new { title = "New title", inverting = true })).ShouldBeAsync(HttpStatusCode.OK);
         Assert.Equal(2, second.GetProperty("retestsAllowed").GetInt32());
         Assert.True(second.GetProperty("signingNeedsQuality").GetBoolean());
         Assert.True(second.GetProperty("inverting").GetBoolean());
         Assert.Equal("New title", second.GetProperty("title").GetString());
 
-        var third = await (await engineer.PatchAsJsonAsync($"/api/devices/{device.Id}", new { retestsAllowed = (int?)null, signingExcludesOwnRuns = true })).ShouldBeAsync(HttpStatusCode.OK);
+        var third = await (await manager.PatchAsJsonAsync($"/api/devices/{device.Id}", new { retestsAllowed = (int?)null, signingExcludesOwnRuns = true })).ShouldBeAsync(HttpStatusCode.OK);
         Assert.Equal(JsonValueKind.Null, third.GetProperty("retestsAllowed").ValueKind);
         Assert.True(third.GetProperty("signingExcludesOwnRuns").GetBoolean());
         Assert.Equal("New title", third.GetProperty("title").GetString());
@@ -51,9 +51,9 @@ public sealed class DeviceSettingsTests(Lab lab)
     public async Task What_this_version_does_not_keep_it_does_not_promise(string field, string body)
     {
         var device = await lab.NewDeviceAsync();
-        var engineer = await lab.SignInAsync("engineer");
+        var manager = await lab.SignInAsync("manager");
 
-        var answer = await engineer.PatchAsync($"/api/devices/{device.Id}", new StringContent(body, System.Text.Encoding.UTF8, "application/json"));
+        var answer = await manager.PatchAsync($"/api/devices/{device.Id}", new StringContent(body, System.Text.Encoding.UTF8, "application/json"));
 
         var problem = await answer.ShouldRefuseAsync(HttpStatusCode.UnprocessableEntity);
         Assert.True(problem.GetProperty("errors").TryGetProperty(field, out _), problem.GetRawText());

@@ -1,5 +1,6 @@
 using System.Net;
 using System.Net.Http.Json;
+using ResponseLedger.Server.Tests.Reevaluation;
 
 namespace ResponseLedger.Server.Tests.Runs;
 
@@ -46,6 +47,58 @@ public sealed class PlaceTests(Lab lab)
             using var response = await RunScene.SendAsync(scene.Engineer, [("bench", scene.Bench), .. fields], [("A.csv", RunScene.Csv(0))]);
             var problem = await response.ShouldRefuseAsync(HttpStatusCode.UnprocessableEntity);
             Assert.True(problem.GetProperty("errors").TryGetProperty(field, out _), problem.ToString());
+        }
+    }
+
+    [Fact]
+    public async Task A_lot_number_that_many_devices_use_is_found_by_its_device()
+    {
+        var scene = await RunScene.NewAsync(lab, mask: false);
+        await lab.ActAsync("device.created", act =>
+        {
+            // More than one look-up reads, and with ids on both sides of the scene's own.
+            for (var i = 0; i < 120; i++)
+            {
+                var id = i % 2 == 0 ? act.NewId() : new Guid(i, 0, 0, new byte[8]);
+                act.Db.AddRange(
+                    new Store.Model.Device { Id = id, PartNumber = Lab.Unique("MANY"), Revision = "A", Kind = "transfer", GainUnit = "V/V", At = act.At, ById = act.ById },
+                    new Store.Model.DeviceSetting { Id = act.NewId(), DeviceId = id, Number = 1, Title = "T", At = act.At, ById = act.ById },
+                    new Store.Model.Condition { Id = act.NewId(), DeviceId = id, Ordinal = 0, Name = "standard", At = act.At, ById = act.ById },
+                    new Store.Model.Lot { Id = act.NewId(), DeviceId = id, Number = scene.LotNumber, Size = 1, At = act.At, ById = act.ById });
+            }
+
+            return true;
+        });
+        await RunScene.NewLotAsync(scene.Engineer, scene.DeviceId, Lab.Unique("LOT"));
+
+        foreach (var device in new[] { scene.DeviceId, scene.PartNumber, scene.PartNumber + "/A" })
+        {
+            using var response = await RunScene.SendAsync(
+                scene.Engineer, [("device", device), ("lot", scene.LotNumber), ("bench", scene.Bench)], [($"{Lab.Unique("S")}.csv", RunScene.Csv(0, device))]);
+            await response.ShouldBeAsync(HttpStatusCode.Created);
+        }
+    }
+
+    [Fact]
+    public async Task A_revision_may_hold_a_slash()
+    {
+        var engineer = await lab.SignInAsync("engineer");
+        var (part, lot) = (Lab.Unique("SLASH"), Lab.Unique("LOT"));
+        var device = await (await engineer.PostAsJsonAsync("/api/devices", new { partNumber = part, revision = "B/2", title = "T", kind = "transfer" })).ShouldBeAsync(HttpStatusCode.Created);
+        var other = await (await engineer.PostAsJsonAsync("/api/devices", new { partNumber = part, revision = "2", title = "T", kind = "transfer" })).ShouldBeAsync(HttpStatusCode.Created);
+        await RunScene.NewLotAsync(engineer, device.GetProperty("id").GetString()!, lot);
+        await RunScene.NewLotAsync(engineer, other.GetProperty("id").GetString()!, lot);
+
+        using var response = await RunScene.SendAsync(engineer, [("device", $"{part}/B/2"), ("lot", lot), ("bench", Lab.Unique("bench"))], [("S1.csv", RunScene.Csv(0, part))]);
+
+        var runId = (await response.ShouldBeAsync(HttpStatusCode.Created)).GetProperty("results")[0].GetProperty("runId").GetString()!;
+        foreach (var list in new[] { "runs", "lots" })
+        {
+            var page = await (await engineer.GetAsync($"/api/{list}?device={Uri.EscapeDataString($"{part}/B/2")}")).ShouldBeAsync(HttpStatusCode.OK);
+            var item = Assert.Single(page.GetProperty("items").EnumerateArray());
+            Assert.Equal(device.GetProperty("id").GetString(), item.GetProperty("deviceId").GetString());
+            if (list == "runs")
+                Assert.Equal(runId, item.GetProperty("id").GetString());
         }
     }
 

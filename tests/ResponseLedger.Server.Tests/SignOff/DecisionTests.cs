@@ -115,7 +115,7 @@ public sealed class DecisionTests(Lab lab)
         await (await scene.DispositionAsync("b", "concession")).ShouldBeAsync(HttpStatusCode.Created);
 
         Assert.Equal(["concessionNeeded"], await scene.BlockersAsync());
-        await (await scene.DecideAsync("approve")).ShouldRefuseAsync(HttpStatusCode.Conflict, "concessionNeeded");
+        Assert.Equal("concessionNeeded", (await (await scene.DecideAsync("approve")).ShouldRefuseAsync(HttpStatusCode.Conflict, "unitsNotPassed")).GetProperty("reason").GetString());
         await (await scene.DecideAsync("approveWithConcession")).ShouldBeAsync(HttpStatusCode.Created);
 
         Assert.Equal("approvedWithConcession", (await scene.LotAsync()).GetProperty("state").GetString());
@@ -136,7 +136,7 @@ public sealed class DecisionTests(Lab lab)
         var scene = await LotScene.NewAsync(lab, 1, mask: false);
         await scene.SendAsync("a", 0);
 
-        await (await scene.DecideAsync("approve")).ShouldRefuseAsync(HttpStatusCode.Conflict, "noReleasedMask");
+        Assert.Equal("noReleasedMask", (await (await scene.DecideAsync("approve")).ShouldRefuseAsync(HttpStatusCode.Conflict, "unitsNotPassed")).GetProperty("reason").GetString());
         var decision = await (await scene.DecideAsync("reject")).ShouldBeAsync(HttpStatusCode.Created);
 
         Assert.Equal(JsonValueKind.Null, decision.GetProperty("record").GetProperty("conditions")[0].GetProperty("maskRevisionId").ValueKind);
@@ -224,7 +224,7 @@ public sealed class DecisionTests(Lab lab)
     {
         var scene = await LotScene.NewAsync(lab, 1);
         await scene.SendAsync("a", 0);
-        await (await scene.Engineer.PatchAsJsonAsync($"/api/devices/{scene.DeviceId}", new { signingNeedsQuality = true })).ShouldBeAsync(HttpStatusCode.OK);
+        await (await (await lab.SignInAsync("quality")).PatchAsJsonAsync($"/api/devices/{scene.DeviceId}", new { signingNeedsQuality = true })).ShouldBeAsync(HttpStatusCode.OK);
 
         await (await scene.DecideAsync("approve")).ShouldRefuseAsync(HttpStatusCode.Forbidden, "notAllowed");
         await (await scene.DecideAsync("approve", client: await lab.SignInAsync("quality"))).ShouldBeAsync(HttpStatusCode.Created);
@@ -234,7 +234,7 @@ public sealed class DecisionTests(Lab lab)
     public async Task A_device_may_keep_people_from_signing_for_runs_of_their_own()
     {
         var scene = await LotScene.NewAsync(lab, 1);
-        await (await scene.Engineer.PatchAsJsonAsync($"/api/devices/{scene.DeviceId}", new { signingExcludesOwnRuns = true })).ShouldBeAsync(HttpStatusCode.OK);
+        await (await (await lab.SignInAsync("quality")).PatchAsJsonAsync($"/api/devices/{scene.DeviceId}", new { signingExcludesOwnRuns = true })).ShouldBeAsync(HttpStatusCode.OK);
         var (_, sender) = await lab.NewPersonAsync("engineer");
         await scene.SendAsync("a", 0, client: sender);
 

@@ -2,6 +2,7 @@ using System.Globalization;
 using System.Text.Encodings.Web;
 using System.Text.Json;
 using System.Text.Json.Nodes;
+using ResponseLedger.Records;
 
 namespace ResponseLedger.Server.Runs.Upload;
 
@@ -121,5 +122,5 @@ internal static class RunCircumstances
         _ => null,
     };
 
-    private static bool IsSound(string text) => text.Length is >= 1 and <= LongestText && !text.Any(char.IsControl);
+    private static bool IsSound(string text) => text.Length is >= 1 and <= LongestText && TextRules.AgainstName(text) is null;
 }

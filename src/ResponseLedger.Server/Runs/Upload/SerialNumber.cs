@@ -1,17 +1,18 @@
 using System.Text.RegularExpressions;
+using ResponseLedger.Records;
 
 namespace ResponseLedger.Server.Runs.Upload;
 
 /// <summary>Serial numbers: what one may look like, and how one is found in a file's name.</summary>
 internal static class SerialNumber
 {
-    public const string Rule = "A serial number has 1 to 100 characters, none of them a control character.";
+    public const string Rule = "A serial number has 1 to 100 characters, none of them a control character or one that changes the direction of writing.";
 
     private const int Longest = 100;
     private static readonly TimeSpan PatternPatience = TimeSpan.FromMilliseconds(100);
 
     /// <summary>Whether a text can be a serial number.</summary>
-    public static bool IsSound(string serial) => serial.Trim() is { Length: >= 1 and <= Longest } text && !text.Any(char.IsControl);
+    public static bool IsSound(string serial) => serial.Trim() is { Length: >= 1 and <= Longest } text && TextRules.AgainstName(text) is null;
 
     /// <summary>
     /// The serial number in a file's name: by the bench's pattern (its group "serial", or the whole match), else the part before
