@@ -15,5 +15,9 @@ export const routes = [
   { pattern: '/runs', tag: 'rl-page-runs', load: () => import('./pages/runs.js'), title: 'Runs' },
   { pattern: '/runs/{id}', tag: 'rl-page-run', load: () => import('./pages/run.js'), title: 'Run' },
   { pattern: '/send', tag: 'rl-page-send', load: () => import('./pages/send.js'), title: 'Send files', roles: may.operate },
+  { pattern: '/devices', tag: 'rl-page-without-screen', load: () => import('./pages/without-screen.js'), title: 'Devices' },
+  { pattern: '/devices/{id}', tag: 'rl-page-without-screen', load: () => import('./pages/without-screen.js'), title: 'Device' },
+  { pattern: '/masks/{id}', tag: 'rl-page-without-screen', load: () => import('./pages/without-screen.js'), title: 'Mask' },
+  { pattern: '/compare', tag: 'rl-page-without-screen', load: () => import('./pages/without-screen.js'), title: 'Compare' },
   { pattern: '/password', tag: 'rl-page-password', load: () => import('./pages/password.js'), title: 'Change password' },
 ];

@@ -8,8 +8,6 @@ const work = [
   { href: '/lots', words: 'Lots' },
   { href: '/send', words: 'Send files', roles: may.operate },
   { href: '/runs', words: 'Runs' },
-  { href: '/compare', words: 'Compare' },
-  { href: '/devices', words: 'Devices' },
 ];
 
 /** @type {typeof work} */
