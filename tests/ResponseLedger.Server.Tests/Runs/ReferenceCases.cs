@@ -49,7 +49,7 @@ internal static class ReferenceCases
     public static void Near(double? expected, double? found, double relative, string what)
         => Close(expected, found, relative * Math.Max(1, Math.Abs(expected ?? 0)), what);
 
-    private static string Folder()
+    public static string Folder()
     {
         for (var folder = new DirectoryInfo(AppContext.BaseDirectory); folder is not null; folder = folder.Parent)
         {
